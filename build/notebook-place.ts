@@ -1,12 +1,12 @@
 // Finds the notebook that an argument names, and says clearly why not.
 
-import { existsSync, readdirSync, statSync } from "node:fs";
+import { existsSync, readdirSync, realpathSync, statSync } from "node:fs";
 import { basename, dirname, isAbsolute, join, relative, resolve, sep } from "node:path";
 import { Failure } from "./command/failure.ts";
 import { didYouMean } from "./command/near-names.ts";
 
 export interface NotebookPlace {
-  /** absolute */
+  /** absolute, links followed: imports are looked up from where the file really is */
   path: string;
   /** as reports and records write it: below the project with slashes, "notebooks/trade-study.ts"; elsewhere the bare file name */
   label: string;
@@ -52,7 +52,8 @@ export function findNotebook(argument: string, projectRoot: string): NotebookPla
   if (facts.size > SIZE_LIMIT) {
     throw new Failure(`${argument} has ${facts.size} bytes; a notebook may have at most ${SIZE_LIMIT}.`);
   }
-  return { path, label: fileLabel(path, projectRoot) };
+  const real = realpathSync(path);
+  return { path: real, label: fileLabel(real, projectRoot) };
 }
 
 /** Other .ts files in the folder that was meant, written as the reader wrote the path. */

@@ -19,11 +19,9 @@ export function valuesCsv(cells: Record<string, Plain>): string {
 
 function sideBySide(tables: { name: string; rows: Row[] }[]): string[][] {
   const columns: { heading: string; column: string; rows: Row[] }[] = [];
-  const uses = new Map<string, number>();
   for (const { name, rows } of tables) {
     for (const column of columnsOf(rows)) {
       columns.push({ heading: tables.length === 1 || column === name ? column : `${name}.${column}`, column, rows });
-      uses.set(column, (uses.get(column) ?? 0) + 1);
     }
   }
   const count = tables[0]!.rows.length;
