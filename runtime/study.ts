@@ -18,8 +18,14 @@ export interface CompiledCell {
   /** 1-based lines in the notebook */
   line: number;
   endLine: number;
-  /** the cell as written */
+  /** the cell as written, with the comment that leads it */
   source: string;
+  /** line on which `source` begins; the cell's own line if left out */
+  sourceLine?: number;
+  /** names it takes from imports */
+  imports?: string[];
+  /** why it can't have a value, found by the compiler; it is never evaluated */
+  problem?: string;
   define: (...inputs: never[]) => unknown;
 }
 
@@ -30,6 +36,11 @@ export interface NotebookModule {
   /** the whole source, as written */
   source: string;
   cells: CompiledCell[];
+  /**
+   * Digest of everything the notebook imports, set by whoever bundles it: when it differs between two versions, `redefine`
+   * evaluates the cells that use an import again. Left out on both sides, imports count as unchanged.
+   */
+  importsDigest?: string;
   /** functions that background() may call in a worker, by name */
   backgroundFunctions: Record<string, (...args: never[]) => unknown>;
 }
@@ -63,6 +74,8 @@ export interface GivenView {
   min?: number;
   max?: number;
   step?: number;
+  /** quantity: the SI value of one `unit`, where a factor is all there is to it: 1e9 for GHz */
+  perUnit?: number;
   /** choice */
   options?: string[];
   /** a sentence, when what was last entered was refused; the value above is the last good one */

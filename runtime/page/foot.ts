@@ -1,0 +1,92 @@
+// The quiet line under a result: its state, its basis, and what can be opened or saved.
+
+import type { CellView } from "../study.ts";
+import { codeToggle } from "./code.ts";
+import { html, idPart, setAttribute, showWhen } from "./dom.ts";
+import type { PageContext } from "./options.ts";
+import { rootsInState } from "./readers.ts";
+import { stateMark, stateWords } from "./state-mark.ts";
+import { typeset } from "./typography.ts";
+
+export interface FootEntry {
+  cell: CellView;
+  code: CellView[];
+  basis?: string;
+  /** a drawing told in words */
+  words?: string;
+  /** quiet links that hand a file to the reader */
+  saves?: { label: string; describes: string; save: () => void }[];
+}
+
+function button(document: Document, act: () => void): HTMLButtonElement {
+  const element = html(document, "button", { type: "button", hidden: true });
+  element.addEventListener("click", act);
+  return element;
+}
+
+export function footLine(context: PageContext, key: string): { element: HTMLElement; update(entry: FootEntry): void } {
+  const { document, study, live } = context;
+  const id = idPart(key);
+  let now: FootEntry | undefined;
+  let savesShown = "";
+  const state = html(document, "span", { class: "state" });
+  const basis = html(document, "span", { class: "basis" });
+  const bar = html(document, "progress", { max: 1, value: 0, "aria-label": "done so far", hidden: true });
+  const roots = (of: CellView["state"]) => (now ? rootsInState(study.cells, now.cell, of) : []);
+  const stop = button(document, () => {
+    for (const cell of roots("working")) study.stop(cell.name);
+  });
+  const again = button(document, () => {
+    for (const cell of roots("behind")) study.again(cell.name);
+  });
+  const saves = html(document, "span", { class: "saves" });
+  const line = html(document, "div", { class: "line" }, bar, state, basis, live && stop, live && again, saves);
+  const told = html(document, "p");
+  const words = html(
+    document,
+    "details",
+    { class: "opens words", id: `words-${id}` },
+    html(document, "summary", {}, "in words"),
+    told,
+  );
+  const code = codeToggle(context, id);
+  const element = html(document, "div", { class: "foot" }, line, words, code.element);
+
+  return {
+    element,
+    update(entry) {
+      now = entry;
+      const working = roots("working");
+      const progress = working.map((cell) => cell.progress).filter((share) => share !== undefined);
+      const share = progress.length > 0 ? Math.min(...progress) : undefined;
+      setAttribute(state, "data-state", entry.cell.state);
+      const said = stateWords(entry.cell.state, share);
+      if (state.textContent !== said) state.replaceChildren(stateMark(document, entry.cell.state), said);
+      const late = entry.cell.state === "behind" || (entry.cell.state === "working" && entry.cell.value !== undefined);
+      const parts = [entry.basis, late && "computed for earlier values"].filter(Boolean);
+      basis.textContent = typeset(parts.join(", "));
+      showWhen(bar, share !== undefined);
+      if (share !== undefined) bar.setAttribute("value", String(share));
+      const behind = entry.cell.state === "behind" && working.length === 0;
+      showWhen(stop, entry.cell.state === "working");
+      showWhen(again, behind);
+      stop.textContent = "stop";
+      again.textContent = "compute";
+      showWhen(words, Boolean(entry.words));
+      told.textContent = typeset(entry.words ?? "");
+      code.update(entry.code);
+      const offered = live ? (entry.saves ?? []) : [];
+      const labels = offered.map((save) => save.describes).join("|");
+      if (labels !== savesShown) {
+        savesShown = labels;
+        saves.replaceChildren(
+          ...offered.map((save, index) => {
+            const link = html(document, "button", { type: "button", title: save.describes }, save.label);
+            link.addEventListener("click", () => now?.saves?.[index]?.save());
+            return link;
+          }),
+        );
+      }
+    },
+  };
+}

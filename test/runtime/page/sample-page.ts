@@ -1,0 +1,24 @@
+// What the tests load in a browser: the sample study, mounted, with its fake at hand.
+
+import { mountStudy } from "../../../runtime/page/mount.ts";
+import type { PageOptions } from "../../../runtime/page/options.ts";
+import { type FakeStudy } from "./fake-study.ts";
+import { sampleStudy } from "./sample-study.ts";
+
+declare global {
+  interface Window {
+    sample: FakeStudy;
+    kept: Record<string, string>[];
+  }
+}
+
+window.kept = [];
+window.sample = sampleStudy();
+const options: PageOptions = {
+  keep: (texts) => {
+    window.kept.push(texts);
+    return "Kept.";
+  },
+  imprint: "Computed on this machine.",
+};
+mountStudy(document.getElementById("study")!, window.sample, options);
