@@ -1,4 +1,8 @@
 // A notebook's source into cells.
+import { checkModule } from "./compile/check-cells.ts";
+import { draftModule } from "./compile/draft.ts";
+import { emitModule } from "./compile/emit.ts";
+import { parseModule } from "./compile/syntax.ts";
 import type { CompiledCell } from "./study.ts";
 
 /** What is wrong in a notebook, and where. */
@@ -44,5 +48,26 @@ export interface CompiledNotebook {
  * @param file   its name as messages print it: "notebooks/trade-study.ts"
  */
 export function compileNotebook(source: string, file: string): CompiledNotebook {
-  throw new Error(`compileNotebook: ${file} (${source.length} characters): not written yet`);
+  const parsed = parseModule(source);
+  const unreadable = parsed.problems.length > 0;
+  const module = draftModule(source, unreadable ? { ...parsed, statements: [], redeclared: [] } : parsed);
+  const checked = checkModule(file, module, parsed);
+  const problems: Problem[] = unreadable
+    ? parsed.problems.map(({ message, line, column }) => ({
+        ...{ kind: "parse", message: `${file} can't be read: ${message}`, file, line, column },
+      }))
+    : checked.problems;
+  const code = unreadable ? emitUnreadable(file, source) : emitModule(file, source, module, checked);
+  const cells = checked.cells.map(
+    ({ draft, part: _part, declareAt: _declareAt, ...info }): CellInfo => ({
+      ...info,
+      source: source.slice(draft.sourceStart, draft.sourceEnd),
+    }),
+  );
+  return { code, cells, problems };
+}
+
+function emitUnreadable(file: string, source: string): string {
+  const notebook = { file, source, cells: [], backgroundFunctions: {} };
+  return `export const notebook = ${JSON.stringify(notebook)};\n`;
 }
