@@ -102,7 +102,6 @@ function esbuildOptions({ projectRoot, entry, platform, minify, sourcemap }: Bun
     target: platform === "node" ? ["node20"] : ["es2022"],
     // CommonJS packages may ask for what Node has built in.
     banner: platform === "node" ? { js: REQUIRE } : undefined,
-    loader: { ".css": "text" },
     minify: minify ?? false,
     legalComments: "none",
     sourcemap: sourcemap ? "external" : false,
@@ -117,7 +116,7 @@ function esbuildOptions({ projectRoot, entry, platform, minify, sourcemap }: Bun
 
 function fromResult(result: esbuild.BuildResult, options: BundleOptions, compiled: CompileReport | undefined): Bundle {
   const file = (ending: string) => result.outputFiles?.find(({ path }) => path.endsWith(ending))?.text;
-  const code = file(".js") ?? "";
+  const code = file(".js") ?? file(".css") ?? "";
   return {
     code,
     hash: createHash("sha256").update(code).digest("hex").slice(0, 16),
@@ -133,7 +132,7 @@ function fromResult(result: esbuild.BuildResult, options: BundleOptions, compile
 function sourcesOf(metafile: esbuild.Metafile, projectRoot: string): string[] {
   return Object.keys(metafile.inputs)
     .map((name) => name.replace(/^notebook:/, ""))
-    .filter((name) => name !== "entry.ts" && !name.startsWith("<") && !/(^|\/)node_modules\//.test(name))
+    .filter((name) => !/^entry\.(ts|css)$/.test(name) && !name.startsWith("<") && !/(^|\/)node_modules\//.test(name))
     .map((name) => resolve(projectRoot, name));
 }
 
@@ -149,6 +148,25 @@ function asFailure(error: unknown, options: BundleOptions): unknown {
   const { errors } = error as Partial<esbuild.BuildFailure>;
   if (!errors) return error;
   return new BundleFailure(errors.map((message) => located(message, options)));
+}
+
+/** Style sheets and what they import, as one text; `files` from the project. */
+export async function bundleStyle(files: readonly string[], projectRoot: string, minify: boolean): Promise<Bundle> {
+  const options: BundleOptions = { projectRoot, entry: "", platform: "browser", minify };
+  try {
+    const result = await esbuild.build({
+      ...esbuildOptions(options),
+      stdin: {
+        contents: files.map((file) => `@import "./${file}";`).join("\n"),
+        resolveDir: projectRoot,
+        sourcefile: "entry.css",
+        loader: "css",
+      },
+    });
+    return fromResult(result, options, undefined);
+  } catch (error) {
+    throw asFailure(error, options);
+  }
 }
 
 /** The notebook and the files it imports that are neither of the project's rooms nor of a package, the notebook first. */

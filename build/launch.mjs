@@ -121,7 +121,7 @@ async function bundle(entry) {
     sourcemap: true,
     metafile: true,
     logLevel: "silent",
-    loader: { ".css": "text", ".html": "text", ".py": "text" },
+    loader: { ".py": "text" },
   });
   const inputs = {};
   for (const path of [...Object.keys(result.metafile.inputs), "package-lock.json"]) {
