@@ -46,7 +46,9 @@ export function studyValues(study: Study): StudyValues {
     const value = walk.plain(cell.name, cell.value, cell.name);
     if (value !== undefined) cells[cell.name] = value;
   }
-  const page = tidy(results.flatMap((cell) => (cell.state !== "failed" && isShown(cell.value) ? words(cell.value) : [])).join("\n"));
+  const page = tidy(
+    results.flatMap((cell) => (cell.state !== "failed" && isShown(cell.value) ? words(cell.value) : [])).join("\n"),
+  );
   return {
     notebook: study.file,
     givens: Object.fromEntries(study.givens.map(({ name, value }) => [name, value])),
@@ -148,10 +150,14 @@ function startWalk(): Walk {
       if (value instanceof Date) return Number.isNaN(value.getTime()) ? null : value.toISOString();
       if (Array.isArray(value)) return value.map((item, i) => plain(cell, item, `${path}[${i}]`) ?? null);
       if (ArrayBuffer.isView(value) && !(value instanceof DataView)) {
-        return Array.from(value as unknown as ArrayLike<number>, (item, i) => plain(cell, item, `${path}[${i}]`) ?? null);
+        return Array.from(
+          value as unknown as ArrayLike<number>,
+          (item, i) => plain(cell, item, `${path}[${i}]`) ?? null,
+        );
       }
       if (value instanceof Set) return [...value].map((item, i) => plain(cell, item, `${path}[${i}]`) ?? null);
-      const entries = value instanceof Map ? [...value].map(([key, item]) => [String(key), item]) : Object.entries(value);
+      const entries =
+        value instanceof Map ? [...value].map(([key, item]) => [String(key), item]) : Object.entries(value);
       noteWarnings(cell, (value as { warnings?: unknown }).warnings);
       const record: { [name: string]: Plain } = {};
       for (const [name, item] of entries as [string, unknown][]) {

@@ -1,4 +1,5 @@
 // What a running study is, for all who look at one: the page, the command line, a test.
+import type { BackgroundPool } from "./background/pool.ts";
 
 /** In our words: computed from the inputs as they are; being computed; inputs moved and the old value is kept, greyed; no value. */
 export type CellState = "current" | "working" | "behind" | "failed";
@@ -55,6 +56,8 @@ export interface CellFailure {
   line: number;
   /** names from the cell where it began to this one */
   path: string[];
+  /** what was thrown */
+  cause?: unknown;
 }
 
 export interface GivenView {
@@ -121,7 +124,8 @@ export interface Study {
   settled(): Promise<void>;
   /** Called once per change of state or value, after each burst, with the cells that changed. Returns a way to leave. */
   subscribe(listener: (changed: readonly CellView[]) => void): () => void;
-  /** Takes a newly compiled version of the notebook: only cells whose text or inputs differ (and what depends on them) are evaluated. */
-  redefine(module: NotebookModule): void;
+  /** Takes a newly compiled version of the notebook: only cells whose text or inputs differ (and what depends on them) are evaluated.
+   * A pool of workers that know the new version takes the former one's place, and work under way begins again in it. */
+  redefine(module: NotebookModule, background?: BackgroundPool): void;
   dispose(): void;
 }
