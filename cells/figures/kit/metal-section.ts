@@ -1,0 +1,129 @@
+// What a horn's inner wall says about its metal: steps, slots, and an outer wall that covers them.
+
+import type { HornProfile } from "../../horn/horn-profile.ts";
+
+type ZR = readonly [z: number, radius: number];
+
+/** An abrupt change of diameter that is no slot. */
+export interface DiameterStep {
+  z: number;
+  from: number;
+  to: number;
+}
+
+/** A ring slot cut into the wall, between two ridges. */
+export interface RingSlot {
+  start: number;
+  end: number;
+  /** m, radius of the ridge on its mouth side */
+  innerRadius: number;
+  outerRadius: number;
+}
+
+export interface WallFeatures {
+  steps: DiameterStep[];
+  slots: RingSlot[];
+}
+
+/**
+ * Finds the abrupt steps of a profile and reads them: up and down again is a slot, up alone (or down alone) a diameter step.
+ * @throws {RangeError} fewer than two points, lengths that differ, z falling, a radius not positive
+ */
+export function wallFeatures(profile: HornProfile): WallFeatures {
+  const points = pointsOf(profile);
+  const jumps: { z: number; from: number; to: number }[] = [];
+  for (let i = 1; i < points.length; i++) {
+    const [z0, from] = points[i - 1]!;
+    const [z1, to] = points[i]!;
+    if (z1 - z0 > 0 || to === from) continue;
+    const last = jumps.at(-1);
+    if (last && last.z === z1 && last.to === from) last.to = to;
+    else jumps.push({ z: z1, from, to });
+  }
+  const features: WallFeatures = { steps: [], slots: [] };
+  for (let i = 0; i < jumps.length; i++) {
+    const up = jumps[i]!;
+    const down = jumps[i + 1];
+    if (up.to > up.from && down && down.to < down.from) {
+      features.slots.push({ start: up.z, end: down.z, innerRadius: down.to, outerRadius: up.to });
+      i++;
+    } else features.steps.push(up);
+  }
+  return features;
+}
+
+/** Points without repetitions. */
+function pointsOf({ z, radius }: HornProfile): ZR[] {
+  if (z.length !== radius.length || z.length < 2)
+    throw new RangeError(
+      `horn profile: must have as many z as radii, at least two; got ${z.length} and ${radius.length}`,
+    );
+  const points: ZR[] = [];
+  z.forEach((at, i) => {
+    const r = radius[i]!;
+    if (!(r > 0) || !Number.isFinite(at))
+      throw new RangeError(
+        `horn profile: point ${i + 1} must have a finite z and a positive radius in m; got z ${at}, radius ${r}`,
+      );
+    const last = points.at(-1);
+    if (last && at < last[0]) throw new RangeError(`horn profile: z must not fall; got ${at} m after ${last[0]} m`);
+    if (!last || last[0] !== at || last[1] !== r) points.push([at, r]);
+  });
+  return points;
+}
+
+/** The inner wall with its slots filled to their bottoms where ridges are thin: what the outer wall has to clear. */
+function clearance(points: ZR[], slots: RingSlot[]): ZR[] {
+  if (slots.length === 0) return points;
+  const first = slots[0]!;
+  const covered: ZR[] = points.filter(([z]) => z < first.start);
+  const before = points.findLast(([z, r]) => z === first.start && r < first.outerRadius);
+  if (before) covered.push(before);
+  let joined = false;
+  slots.forEach((slot, i) => {
+    const nextStart = slots[i + 1]?.start ?? 0;
+    // A ridge much longer than the slot beside it is a wall of its own.
+    const joins = nextStart - slot.end <= 2 * (slot.end - slot.start);
+    // Between joined slots the wall runs straight from middle to middle; an end keeps its corner.
+    if (!joined) covered.push([slot.start, slot.outerRadius]);
+    covered.push([(slot.start + slot.end) / 2, slot.outerRadius]);
+    if (!joins) {
+      covered.push([slot.end, slot.outerRadius]);
+      covered.push(...points.filter(([z, r]) => z >= slot.end && z <= nextStart && r < slot.outerRadius));
+    } else if (!slots[i + 1]) covered.push([0, slot.outerRadius]);
+    joined = joins;
+  });
+  return covered;
+}
+
+/**
+ * Outer wall of a horn turned with an even wall: the inner wall (slots covered) moved outward by `wall` in radius, and by
+ * `wall` along the axis where it steps.
+ * @returns points from the throat plane to the mouth plane
+ */
+export function outerWall(profile: HornProfile, wall: number): ZR[] {
+  const covered = clearance(pointsOf(profile), wallFeatures(profile).slots);
+  const start = covered[0]![0];
+  const moved: [number, number][] = [];
+  covered.forEach(([z, r], i) => {
+    const before = covered[i - 1];
+    const after = covered[i + 1];
+    const rises = (after && after[0] === z && after[1] > r) || (before && before[0] === z && r > before[1]);
+    const falls = (after && after[0] === z && after[1] < r) || (before && before[0] === z && r < before[1]);
+    const shift = rises && !falls ? -wall : falls && !rises ? wall : 0;
+    moved.push([Math.min(0, Math.max(start, z + shift)), r + wall]);
+  });
+  // Where shifted corners overtook each other (steps closer than the wall is thick) the larger radius holds.
+  const outline: ZR[] = [];
+  for (const point of moved) {
+    while (outline.length > 0 && outline.at(-1)![0] > point[0] && outline.at(-1)![1] <= point[1]) outline.pop();
+    const last = outline.at(-1);
+    outline.push(last && last[0] > point[0] ? [last[0], point[1]] : point);
+  }
+  return outline;
+}
+
+/** Largest radius that the outer wall has to clear, m. */
+export function largestInnerRadius({ radius }: HornProfile): number {
+  return radius.reduce((largest, r) => Math.max(largest, r), 0);
+}
