@@ -13,23 +13,23 @@ export function fragmentOf(study: Study): string {
 }
 
 export interface Asked {
-  texts: Record<string, string>;
+  texts: Map<string, string>;
   /** a sentence for each part that couldn't be read */
   complaints: string[];
 }
 
 /** What a fragment asks for. A fragment without "=" asks for no given. */
 export function readFragment(fragment: string): Asked {
-  const asked: Asked = { texts: {}, complaints: [] };
+  const asked: Asked = { texts: new Map(), complaints: [] };
   const bare = fragment.replace(/^#/, "");
   if (!bare.includes("=")) return asked;
   for (const part of bare.split("&").filter(Boolean)) {
     const at = part.indexOf("=");
     try {
       if (at < 1) throw new URIError("no name");
-      asked.texts[decodeURIComponent(part.slice(0, at))] = decodeURIComponent(part.slice(at + 1));
+      asked.texts.set(decodeURIComponent(part.slice(0, at)), decodeURIComponent(part.slice(at + 1)));
     } catch {
-      asked.complaints.push(`The address holds “${part.slice(0, 60)}”, which is no given and value; it was left out.`);
+      asked.complaints.push(`Not taken from the address: “${part.slice(0, 60)}” is no name and value.`);
     }
   }
   return asked;
@@ -41,12 +41,12 @@ export function applyFragment(study: Study, fragment: string): string[] {
   const names = new Set(study.givens.map((given) => given.name));
   const wanted: Record<string, string> = {};
   for (const given of study.givens) {
-    const text = Object.hasOwn(texts, given.name) ? texts[given.name]! : given.defaultText;
+    const text = texts.get(given.name) ?? given.defaultText;
     if (text !== given.text) wanted[given.name] = text;
   }
-  for (const name of Object.keys(texts))
+  for (const name of texts.keys())
     if (!names.has(name))
-      complaints.push(`The address names “${name.slice(0, 60)}”, which is no given of this study; it was left out.`);
+      complaints.push(`Not taken from the address: “${name.slice(0, 60)}” is no given of this study.`);
   // All that can be entered go in together, for one evaluation; each round takes out one that can't.
   while (Object.keys(wanted).length > 0) {
     const result = study.setAll(wanted);
@@ -54,9 +54,7 @@ export function applyFragment(study: Study, fragment: string): string[] {
     const given = study.givens.find(({ name }) => name === result.name);
     if (!given || !Object.hasOwn(wanted, result.name)) break;
     const message = result.message.replace(/[.\s]+$/, "");
-    complaints.push(
-      `The address asks for ${given.label} “${wanted[result.name]!.slice(0, 60)}”: ${message}. It stays at ${given.text}.`,
-    );
+    complaints.push(`Not taken from the address: ${message}. It stays at ${given.text.slice(0, 60)}.`);
     delete wanted[result.name];
   }
   return complaints;

@@ -56,11 +56,17 @@ export function showWhen(element: Element, shown: boolean): void {
   setAttribute(element, "hidden", shown ? undefined : "");
 }
 
-/** A string that may stand in an id: letters, digits, hyphens. */
+/** A cell's or given's name in an id: two names never share one. */
+export function nameId(name: string): string {
+  return name.replace(/\W/g, (sign) => (sign === " " ? "-" : `-${sign.codePointAt(0)?.toString(16)}`));
+}
+
+/** Words in an id or a file name: letters, digits, hyphens. */
 export function idPart(text: string): string {
   const part = text
     .toLowerCase()
     .normalize("NFKD")
+    .replace(/\p{M}/gu, "")
     .replace(/[^a-z0-9]+/g, "-")
     .replace(/^-+|-+$/g, "");
   return part || "x";

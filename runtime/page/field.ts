@@ -90,8 +90,7 @@ function longText(context: PageContext, given: GivenView, id: string, enter: Ent
   const { document, live } = context;
   const area = html(document, "textarea", { id, rows: 4, spellcheck: "false", readonly: !live, wrap: "off" });
   const update = typed(context, given, enter, area);
-  if (!live) return { element: area, update };
-  const pick = html(document, "input", { type: "file", "aria-label": `${given.label}, from a file` });
+  const pick = html(document, "input", { type: "file", "aria-label": `${given.label}, from a file`, disabled: !live });
   const said = html(document, "span", { class: "said", role: "status" });
   pick.addEventListener("change", async () => {
     const file = pick.files?.[0];

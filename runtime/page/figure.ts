@@ -18,12 +18,8 @@ export function figureBlock(context: PageContext, first: ShownEntry, titleLevel:
   const draw = (figure: Figure, width: number): Node => {
     try {
       drawing = figure.drawing.draw({ document, width });
-      return html(
-        document,
-        "div",
-        { class: "drawing", role: "img", "aria-label": typeset(figure.drawing.alt) },
-        drawing,
-      );
+      const picture = html(document, "div", { role: "img", "aria-label": typeset(figure.drawing.alt) }, drawing);
+      return html(document, "div", { class: "drawing" }, picture);
     } catch (error) {
       drawing = undefined;
       const reason = error instanceof Error ? error.message : String(error);

@@ -2,7 +2,7 @@
 
 import type { CellView } from "../study.ts";
 import { codeToggle } from "./code.ts";
-import { html, idPart, setAttribute, showWhen } from "./dom.ts";
+import { html, nameId, setAttribute, showWhen } from "./dom.ts";
 import type { PageContext } from "./options.ts";
 import { rootsInState } from "./readers.ts";
 import { stateMark, stateWords } from "./state-mark.ts";
@@ -26,7 +26,7 @@ function button(document: Document, act: () => void): HTMLButtonElement {
 
 export function footLine(context: PageContext, key: string): { element: HTMLElement; update(entry: FootEntry): void } {
   const { document, study, live } = context;
-  const id = idPart(key);
+  const id = nameId(key);
   let now: FootEntry | undefined;
   let savesShown = "";
   const state = html(document, "span", { class: "state" });

@@ -1,7 +1,7 @@
 // What every shown thing has around it: title, notes beside it, the thing itself, its caption and its foot line.
 
 import type { CellView } from "../study.ts";
-import { holdChildren, html, idPart, setAttribute } from "./dom.ts";
+import { holdChildren, html, nameId, setAttribute } from "./dom.ts";
 import { failureLine } from "./failure.ts";
 import { type FootEntry, footLine } from "./foot.ts";
 import { letterMarks, marginNote, noteSignature } from "./margin.ts";
@@ -25,7 +25,7 @@ export interface Frame {
 
 /** The anchor of a cell's place on the page. */
 export function placeId(name: string): string {
-  return `at-${idPart(name)}`;
+  return `at-${nameId(name)}`;
 }
 
 export function frame(context: PageContext, cell: CellView, kind: "figure" | "table"): Frame {
@@ -70,7 +70,7 @@ export function frame(context: PageContext, cell: CellView, kind: "figure" | "ta
 /** What stands in a frame that has no value: why it failed, what the file showed before its script woke, or a word. */
 export function emptyContent(context: PageContext, cell: CellView): Node {
   const { document } = context;
-  if (cell.state === "failed") return failureLine(document, cell);
+  if (cell.state === "failed") return failureLine(document, cell, false);
   const painted = context.painted.get(cell.name);
   if (painted) return painted;
   return html(document, "p", { class: "pending" }, "Not computed yet.");

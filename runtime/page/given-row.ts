@@ -1,7 +1,7 @@
 // One given: quantity, value, slider, reason; "was …" where it differs from the file, a sentence where an entry was refused.
 
 import type { GivenView } from "../study.ts";
-import { html, idPart, setAttribute, showWhen } from "./dom.ts";
+import { html, nameId, setAttribute, showWhen } from "./dom.ts";
 import { type Field, field } from "./field.ts";
 import { letterMarks, noteSignature } from "./margin.ts";
 import type { PageContext } from "./options.ts";
@@ -25,7 +25,7 @@ export function givenShape(given: GivenView): string {
 export function givenRow(context: PageContext, first: GivenView): GivenRow {
   const { document, still } = context;
   const { name } = first;
-  const id = `given-${idPart(name)}`;
+  const id = `given-${nameId(name)}`;
   const enter = (text: string) => context.enter(name, text);
   const control: Field = field(context, first, id, enter);
   const marks = html(document, "span");
@@ -45,7 +45,7 @@ export function givenRow(context: PageContext, first: GivenView): GivenRow {
   const element = html(
     document,
     "tr",
-    { role: "row", id: `row-${idPart(name)}`, "data-row": name, "data-form": first.form },
+    { role: "row", id: `row-${nameId(name)}`, "data-row": name, "data-form": first.form },
     ...cells,
   );
   const input = ["input", "textarea", "select"].includes(control.element.localName)

@@ -64,7 +64,7 @@ function actionLine(context: PageContext): { element: HTMLElement; update(givens
 }
 
 export function givensBlock(context: PageContext): Block<GivensEntry> {
-  const { document, study, live, still } = context;
+  const { document, study, still } = context;
   const column = (className: string, label: string, unseen = false) =>
     html(
       document,
@@ -89,7 +89,7 @@ export function givensBlock(context: PageContext): Block<GivensEntry> {
     html(document, "thead", { role: "rowgroup" }, head),
     body,
   );
-  const actions = live ? actionLine(context) : undefined;
+  const actions = still ? undefined : actionLine(context);
   const element = html(document, "div", { class: "block given-table" });
   const rows = new Map<string, { row: GivenRow; shape: string }>();
   let loose: HTMLElement[] = [];

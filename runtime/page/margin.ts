@@ -51,7 +51,7 @@ export function noteSignature(notes: readonly PlannedNote[]): string {
 /** The note itself. */
 export function marginNote(document: Document, note: PlannedNote): HTMLElement {
   const word = note.cell.state === "failed" ? "Note failed" : (words[note.mark] ?? words.reading);
-  const body = html(document, "div", { class: "words" });
+  const body = html(document, "div", { class: "saying" });
   if (note.cell.state === "failed") body.append(failureLine(document, note.cell));
   else body.append(...prose(document, note.markdown, 4));
   tagProse(document, body, note.cell);

@@ -4,6 +4,7 @@ import type { Study } from "../study.ts";
 import { type AddressLink, linkAddress } from "./address.ts";
 import { studyTitle } from "./head.ts";
 import { shownKind } from "./kind.ts";
+import { markMeasured } from "./measured.ts";
 import type { PageContext, PageOptions } from "./options.ts";
 import { buildPage } from "./page.ts";
 
@@ -81,9 +82,17 @@ export function mountStudy(root: Element, study: Study, options: PageOptions = {
     painted: paintedContent(root),
   };
   const page = buildPage(context);
+  let measuring: ReturnType<typeof setTimeout> | undefined;
+  const measureSoon = () => {
+    // Not while a control turns: measuring makes the browser lay out the page at once.
+    clearTimeout(measuring);
+    measuring = setTimeout(() => markMeasured(root), 120);
+  };
   const refresh = () => {
     page.update();
-    if (mounted) document.title = studyTitle(study);
+    if (!mounted) return;
+    document.title = studyTitle(study);
+    measureSoon();
   };
 
   if (options.address !== false) address = linkAddress(window, study, page.head.say);
@@ -121,6 +130,7 @@ export function mountStudy(root: Element, study: Study, options: PageOptions = {
   };
   root.addEventListener("click", go);
   const resized = () => {
+    measureSoon();
     const now = columnWidth(root);
     if (now === width) return;
     width = now;
@@ -136,6 +146,7 @@ export function mountStudy(root: Element, study: Study, options: PageOptions = {
       page.dispose();
       address?.dispose();
       clearTimeout(timer);
+      clearTimeout(measuring);
       window.cancelAnimationFrame(frame);
       root.removeEventListener("click", go);
       window.removeEventListener("resize", resized);

@@ -3,6 +3,7 @@
 import type { Study } from "../study.ts";
 import type { PageContext, PageOptions } from "./options.ts";
 import { buildPage } from "./page.ts";
+import { serialize } from "./serialize.ts";
 
 export interface RenderOptions extends PageOptions {
   /** where elements are made: linkedom's document, or a browser's */
@@ -30,5 +31,5 @@ export function renderStudy(study: Study, options: RenderOptions): string {
   };
   const page = buildPage(context);
   page.update();
-  return page.elements.map((element) => element.outerHTML).join("\n");
+  return page.elements.map(serialize).join("\n");
 }

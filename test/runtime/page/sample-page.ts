@@ -2,7 +2,7 @@
 
 import { mountStudy } from "../../../runtime/page/mount.ts";
 import type { PageOptions } from "../../../runtime/page/options.ts";
-import { type FakeStudy } from "./fake-study.ts";
+import type { FakeStudy } from "./fake-study.ts";
 import { sampleStudy } from "./sample-study.ts";
 
 declare global {
