@@ -1,9 +1,8 @@
 // The command line: finds the verb, reads its arguments, turns whatever goes wrong into one sentence and an exit code.
 
-import { readFile } from "node:fs/promises";
-import { join } from "node:path";
 import { EXIT, Failure } from "./command/failure.ts";
 import { didYouMean } from "./command/near-names.ts";
+import { projectVersion } from "./command/surroundings.ts";
 import { type CommandContext, readArguments, type Verb } from "./command/verb.ts";
 
 /** In the order of the help. Each verb is loaded only when it is asked for, so that help comes at once. */
@@ -86,9 +85,4 @@ async function run(argv: string[], context: CommandContext): Promise<number> {
     return EXIT.ok;
   }
   return verb.run(readArguments(name, verb, rest), context);
-}
-
-/** The version in package.json. */
-export async function projectVersion({ projectRoot }: CommandContext): Promise<string> {
-  return JSON.parse(await readFile(join(projectRoot, "package.json"), "utf8")).version;
 }

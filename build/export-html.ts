@@ -13,11 +13,14 @@ export interface ExportParts {
   /** the live page's module; none: a still file */
   script?: string;
   record: ExportRecord;
+  /** packages whose code the script holds, with version and licence */
+  notices: readonly string[];
 }
 
 const hashSource = (text: string): string => `'sha256-${createHash("sha256").update(text, "utf8").digest("base64")}'`;
 
-const escapeText = (text: string): string => text.replaceAll("&", "&amp;").replaceAll("<", "&lt;").replaceAll(">", "&gt;");
+const escapeText = (text: string): string =>
+  text.replaceAll("&", "&amp;").replaceAll("<", "&lt;").replaceAll(">", "&gt;");
 
 /**
  * Script text that can stand in an HTML script element: nothing in it ends the element or begins a comment. Both sequences can
@@ -44,7 +47,7 @@ const unescapeAttribute = (text: string): string =>
   text.replaceAll("&quot;", '"').replaceAll("&lt;", "<").replaceAll("&gt;", ">").replaceAll("&amp;", "&");
 
 /** The whole file. */
-export function exportHtml({ title, firstPaint, style, script, record }: ExportParts): string {
+export function exportHtml({ title, firstPaint, style, script, record, notices }: ExportParts): string {
   const css = styleText(style);
   const live = script === undefined ? undefined : scriptText(script);
   const policy = [
@@ -71,6 +74,7 @@ export function exportHtml({ title, firstPaint, style, script, record }: ExportP
     "<body>",
     `<div id="study">${firstPaint}</div>`,
     recordElement(record, { still: live === undefined }),
+    ...(notices.length === 0 ? [] : [`<!-- The script holds: ${notices.join("; ").replaceAll("--", "- -")} -->`]),
     ...(live === undefined ? [] : [`<script type="module" id="hornbook-live">${live}</script>`]),
     "</body>",
     "</html>",

@@ -17,6 +17,7 @@ export function wake(notebook: NotebookModule): void {
     const record = JSON.parse(document.getElementById("hornbook-record")!.textContent!) as ExportRecord;
     const text = document.getElementById("hornbook-live")!.textContent!;
     const background = createBackgroundPool({ spawn: browserSpawn({ text }) });
+    if (notebook.cells.some((cell) => cell.background)) background.warm();
     const study = createStudy(notebook, { background, givens: record.givens });
     // The address holds the givens that differ from the file; one that says nothing means those of the export.
     const asExported = fragmentOf(study);

@@ -2,8 +2,8 @@
 
 import { createHash } from "node:crypto";
 import { readFile } from "node:fs/promises";
-import type { OpenState, ProblemPlace } from "../runtime/server/open-state.ts";
 import type { Asset } from "../runtime/server/local-server.ts";
+import type { OpenState, ProblemPlace } from "../runtime/server/open-state.ts";
 import { type FileWatch, watchFiles } from "../runtime/server/watch-files.ts";
 import { type Bundle, BundleFailure, bundleStyle, createBundler } from "./bundle.ts";
 import { NOTEBOOK_ENTRY, PAGE_ENTRY } from "./entries.ts";
@@ -37,7 +37,12 @@ export async function createLiveSite(
   const notebookBundler = await createBundler({
     ...{ projectRoot, entry: NOTEBOOK_ENTRY, notebook: place, platform: "browser", sourcemap: true },
   });
-  const known = { page: "", style: "", notebook: undefined as string | undefined, imports: undefined as string | undefined };
+  const known = {
+    page: "",
+    style: "",
+    notebook: undefined as string | undefined,
+    imports: undefined as string | undefined,
+  };
   let problems: ProblemPlace[] = [];
   let pageInputs: string[] = [];
   let notebookInputs: string[] = [place.path];
@@ -120,7 +125,11 @@ async function importsDigest(files: readonly string[]): Promise<string> {
   return hash.digest("hex").slice(0, 16);
 }
 
-function pageHtml(label: string, { page, style }: { page: string; style: string }, config: OpenState & { token: string }): string {
+function pageHtml(
+  label: string,
+  { page, style }: { page: string; style: string },
+  config: OpenState & { token: string },
+): string {
   const json = JSON.stringify(config).replaceAll("<", "\\u003c");
   const title = label.replaceAll("&", "&amp;").replaceAll("<", "&lt;");
   return `<!doctype html>

@@ -4,6 +4,7 @@ import { existsSync, readdirSync, realpathSync, statSync } from "node:fs";
 import { basename, dirname, isAbsolute, join, relative, resolve, sep } from "node:path";
 import { Failure } from "./command/failure.ts";
 import { didYouMean } from "./command/near-names.ts";
+import { readerFolder } from "./command/surroundings.ts";
 
 export interface NotebookPlace {
   /** absolute, links followed: imports are looked up from where the file really is */
@@ -38,8 +39,7 @@ export function notebooksAtHand(projectRoot: string): string[] {
  * @throws {Failure} no such file, a folder, not a .ts file, too large
  */
 export function findNotebook(argument: string, projectRoot: string): NotebookPlace {
-  // npm runs a script in the project's folder and tells where the reader was.
-  const from = [process.cwd(), process.env.INIT_CWD, projectRoot].filter((f): f is string => Boolean(f));
+  const from = [readerFolder(projectRoot), process.cwd(), projectRoot];
   const path = from.map((folder) => resolve(folder, argument)).find((candidate) => existsSync(candidate));
   if (path === undefined) {
     const names = [...new Set([...notebooksAtHand(projectRoot), ...beside(resolve(from[0]!, argument), argument)])];

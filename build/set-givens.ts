@@ -5,6 +5,7 @@ import { resolve } from "node:path";
 import type { Study } from "../runtime/study.ts";
 import { Failure, systemWords } from "./command/failure.ts";
 import { didYouMean } from "./command/near-names.ts";
+import { readerFolder } from "./command/surroundings.ts";
 
 const FILE_LIMIT = 32 * 1024 * 1024;
 
@@ -16,7 +17,7 @@ export const SET_HELP = `  --set NAME=VALUE   a given's value with its unit: --s
  * Reads the texts of `--set`.
  * @throws {Failure} no `=`, a name twice, a file that can't be read as UTF-8 text
  */
-export async function readSets(sets: readonly string[]): Promise<Record<string, string>> {
+export async function readSets(sets: readonly string[], projectRoot: string): Promise<Record<string, string>> {
   const texts: Record<string, string> = {};
   for (const set of sets) {
     const at = set.indexOf("=");
@@ -27,14 +28,14 @@ export async function readSets(sets: readonly string[]): Promise<Record<string, 
     texts[name] = value.startsWith("@@")
       ? value.slice(1)
       : value.startsWith("@")
-        ? await fileText(name, value.slice(1))
+        ? await fileText(name, value.slice(1), projectRoot)
         : value;
   }
   return texts;
 }
 
-async function fileText(name: string, path: string): Promise<string> {
-  const from = [process.cwd(), process.env.INIT_CWD].filter((f): f is string => Boolean(f));
+async function fileText(name: string, path: string, projectRoot: string): Promise<string> {
+  const from = [readerFolder(projectRoot), process.cwd()];
   let failure: unknown;
   for (const folder of from) {
     try {

@@ -18,7 +18,10 @@ export function typeProblems(files: readonly string[], projectRoot: string): Loc
     projectRoot,
   );
   const program = ts.createProgram({ rootNames: [...files], options });
-  const checker = [(file: ts.SourceFile) => program.getSyntacticDiagnostics(file), (file: ts.SourceFile) => program.getSemanticDiagnostics(file)];
+  const checker = [
+    (file: ts.SourceFile) => program.getSyntacticDiagnostics(file),
+    (file: ts.SourceFile) => program.getSemanticDiagnostics(file),
+  ];
   const found: Located[] = [];
   for (const path of files) {
     const file = program.getSourceFile(path);
@@ -38,5 +41,9 @@ function placed({ file, start, messageText }: ts.Diagnostic, projectRoot: string
   if (!file || start === undefined) return { file: "tsconfig.json", line: 0, text };
   // Paths of this machine inside a message become labels.
   const tidy = text.replaceAll(`${projectRoot}/`, "").replaceAll(`${dirname(file.fileName)}/`, "");
-  return { file: fileLabel(file.fileName, projectRoot), line: file.getLineAndCharacterOfPosition(start).line + 1, text: tidy };
+  return {
+    file: fileLabel(file.fileName, projectRoot),
+    line: file.getLineAndCharacterOfPosition(start).line + 1,
+    text: tidy,
+  };
 }

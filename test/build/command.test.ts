@@ -57,19 +57,19 @@ test("readSets: text from a file, a text that begins with @, spaces kept", async
   const folder = await mkdtemp(join(tmpdir(), "sets-"));
   const file = join(folder, "horn.csv");
   await writeFile(file, "z_mm,r_mm\r\n0,10\r\n");
-  expect(await readSets([`profile=@${file}`, "name=@@home", "d= 2.4 m", "e=a=b"])).toEqual({
+  expect(await readSets([`profile=@${file}`, "name=@@home", "d= 2.4 m", "e=a=b"], "/")).toEqual({
     profile: "z_mm,r_mm\r\n0,10\r\n",
     name: "@home",
     d: " 2.4 m",
     e: "a=b",
   });
   await writeFile(file, Buffer.from([0xff, 0xfe, 0x41]));
-  await expect(readSets([`profile=@${file}`])).rejects.toThrow(/isn't UTF-8 text/);
-  await expect(readSets([`profile=@${folder}`])).rejects.toThrow(/it is a folder/);
-  await expect(readSets(["profile=@/no/such/file"])).rejects.toThrow(/there is no such file/);
-  await expect(readSets(["profile"])).rejects.toThrow(/must be name=value; got "profile"/);
-  await expect(readSets(["=3"])).rejects.toThrow(/must be name=value/);
-  await expect(readSets(["a=1", "a=2"])).rejects.toThrow(/gives a twice/);
+  await expect(readSets([`profile=@${file}`], "/")).rejects.toThrow(/isn't UTF-8 text/);
+  await expect(readSets([`profile=@${folder}`], "/")).rejects.toThrow(/it is a folder/);
+  await expect(readSets(["profile=@/no/such/file"], "/")).rejects.toThrow(/there is no such file/);
+  await expect(readSets(["profile"], "/")).rejects.toThrow(/must be name=value; got "profile"/);
+  await expect(readSets(["=3"], "/")).rejects.toThrow(/must be name=value/);
+  await expect(readSets(["a=1", "a=2"], "/")).rejects.toThrow(/gives a twice/);
 });
 
 test("startProgress: silent at first, then one line, and gone at the end", async () => {
