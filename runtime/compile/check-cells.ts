@@ -184,18 +184,20 @@ function nearest(name: string, candidates: readonly string[]): string | undefine
   return best;
 }
 
-/** Levenshtein distance, two rows. */
+/** Letters to insert, drop, change or swap with their neighbour (optimal string alignment). */
 function editDistance(a: string, b: string): number {
-  let row = Array.from({ length: b.length + 1 }, (_, i) => i);
+  const rows = [Array.from({ length: b.length + 1 }, (_, j) => j)];
+  const at = (i: number, j: number): number => rows[i]?.[j] ?? 0;
   for (let i = 1; i <= a.length; i++) {
-    const next = [i];
+    const row = [i];
+    rows.push(row);
     for (let j = 1; j <= b.length; j++) {
-      const change = (row[j - 1] as number) + (a[i - 1] === b[j - 1] ? 0 : 1);
-      next[j] = Math.min(change, (row[j] as number) + 1, (next[j - 1] as number) + 1);
+      const change = at(i - 1, j - 1) + (a[i - 1] === b[j - 1] ? 0 : 1);
+      const swapped = i > 1 && j > 1 && a[i - 1] === b[j - 2] && a[i - 2] === b[j - 1];
+      row.push(Math.min(change, at(i - 1, j) + 1, at(i, j - 1) + 1, swapped ? at(i - 2, j - 2) + 1 : change));
     }
-    row = next;
   }
-  return row[b.length] as number;
+  return at(a.length, b.length);
 }
 
 function reportCycles(cells: readonly CellDraft[], report: Report): void {
@@ -203,15 +205,15 @@ function reportCycles(cells: readonly CellDraft[], report: Report): void {
   const graph = new Map(cells.map((cell) => [cell.name, cell.inputs]));
   for (const cycle of cyclesOf(graph)) {
     // A destructuring's hidden cell is no name the reader knows.
-    const visible = cycle.slice(0, -1).filter((name) => !byName.get(name)?.hidden);
+    const named = cycle.slice(0, -1).filter((name) => !byName.get(name)?.hidden);
+    const orders = named.map((name) => cells.findIndex((cell) => cell.name === name));
+    const first = orders.indexOf(Math.min(...orders));
+    const visible = [...named.slice(first), ...named.slice(0, first)];
     const path = [...visible, visible[0]].join(" → ");
     const message = `${visible[0]} needs its own value: ${path}; one of these must do without another`;
-    const first = byName.get(visible[0] as string) as CellDraft;
-    report("cycle", message, bindingNode(first), first);
-    for (const name of cycle) {
-      const cell = byName.get(name) as CellDraft;
-      cell.problem ??= message;
-    }
+    const cell = byName.get(visible[0] as string) as CellDraft;
+    report("cycle", message, bindingNode(cell), cell);
+    for (const name of cycle) (byName.get(name) as CellDraft).problem ??= message;
   }
 }
 

@@ -208,7 +208,9 @@ function visitFunction(node: Node, place: Place, found: FreeNames, onTheSpot: bo
   };
   // Defaults of parameters see the other parameters, not what the body declares.
   for (const parameter of parameters) visitBinding(parameter, inner, found);
-  const body = child(node, "body") as Node;
+  const body = child(node, "body");
+  // An abstract method has none.
+  if (!body) return;
   if (body.type === "BlockStatement") visitFunctionBody(children(body, "body"), inner, found);
   else visit(body, inner, found);
 }
