@@ -94,7 +94,8 @@ export function linkAddress(window: Window, study: Study, said: (sentences: stri
     written = here;
     said(applyFragment(study, here));
   };
-  read();
+  // An address that says nothing leaves the study as it was handed over.
+  if (window.location.hash.includes("=")) read();
   window.addEventListener("hashchange", read);
   window.addEventListener("popstate", read);
   return {

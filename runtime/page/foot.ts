@@ -62,9 +62,11 @@ export function footLine(context: PageContext, key: string): { element: HTMLElem
       setAttribute(state, "data-state", entry.cell.state);
       const said = stateWords(entry.cell.state, share);
       if (state.textContent !== said) state.replaceChildren(stateMark(document, entry.cell.state), said);
-      const late = entry.cell.state === "behind" || (entry.cell.state === "working" && entry.cell.value !== undefined);
-      const parts = [entry.basis, late && "computed for earlier values"].filter(Boolean);
-      basis.textContent = typeset(parts.join(", "));
+      const { value } = entry.cell;
+      const late = entry.cell.state === "behind" || (entry.cell.state === "working" && value !== undefined);
+      const painted = entry.cell.state === "working" && value === undefined && context.painted.has(entry.cell.name);
+      const parts = [entry.basis, late && "computed for earlier values", painted && "shown as the file holds it"];
+      basis.textContent = typeset(parts.filter(Boolean).join(", "));
       showWhen(bar, share !== undefined);
       if (share !== undefined) bar.setAttribute("value", String(share));
       const behind = entry.cell.state === "behind" && working.length === 0;

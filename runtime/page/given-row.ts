@@ -63,8 +63,8 @@ export function givenRow(context: PageContext, first: GivenView): GivenRow {
       const short = given.defaultText.length <= 40 && !given.defaultText.includes("\n");
       was.textContent = changed ? (short ? `was ${typeset(given.defaultText)}` : "differs from the file") : "";
       showWhen(was, changed);
-      const kept = given.text.length <= 40 ? `; ${typeset(given.text)} stands` : "; the value before stands";
-      const said = given.refusal ? `${given.refusal.message.replace(/[.\s]+$/, "")}${kept}.` : "";
+      const stands = given.text.length <= 40 ? typeset(given.text) : "The value before";
+      const said = given.refusal ? `${given.refusal.message.replace(/[.\s]+$/, "")}. ${stands} stands.` : "";
       if (refusal.textContent !== said) refusal.textContent = said;
       if (why.textContent !== given.why) why.replaceChildren(...phrase(document, given.why));
       if (input) {

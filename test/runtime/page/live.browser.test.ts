@@ -77,7 +77,7 @@ describe("givens", () => {
     await page.keyboard.press("Enter");
     await frames(page);
     expect(await page.textContent("#given-dishDiameter-refusal")).toBe(
-      "Dish diameter must lie between 0.5 and 12 m; got 90 m; 2.4\u00a0m stands.",
+      "Dish diameter must lie between 0.5 and 12 m; got 90 m. 2.4\u00a0m stands.",
     );
     const field = page.locator("#given-dishDiameter");
     expect(await field.getAttribute("aria-invalid")).toBe("true");
@@ -236,6 +236,87 @@ describe("a painted page", () => {
   });
 });
 
+describe("drawings", () => {
+  test("are drawn for the room there is, and again only when that changes", async () => {
+    const page = await pages.open();
+    const width = () => page.locator('[data-cell="patterns"] .drawing svg').getAttribute("width");
+    expect(await width()).toBe("760");
+    await page.setViewportSize({ width: 390, height: 900 });
+    await expect.poll(width).toBe("354");
+    await page.setViewportSize({ width: 1300, height: 900 });
+    await expect.poll(width).toBe("760");
+  });
+
+  test("a drawing and its numbers can be saved as files", async () => {
+    const page = await pages.open();
+    const figure = page.locator('[data-cell="patterns"]');
+    const text = async (name: string) => {
+      const [download] = await Promise.all([
+        page.waitForEvent("download"),
+        figure.getByRole("button", { name }).click(),
+      ]);
+      return { file: download.suggestedFilename(), text: readFileSync(await download.path(), "utf8") };
+    };
+    expect(await text("numbers")).toEqual({
+      file: "patterns.csv",
+      text: '"theta, deg","level, dB"\r\n0,0\r\n30,-11\r\n60,-33\r\n',
+    });
+    const drawing = await text("drawing");
+    expect(drawing.file).toBe("patterns.svg");
+    expect(drawing.text).toMatch(/^<svg [^>]*xmlns="http:\/\/www.w3.org\/2000\/svg"[\s\S]*<polyline[\s\S]*<\/svg>$/);
+  });
+
+  test("a figure that is still being computed shows what the file holds, and says so", async () => {
+    const page = await pages.open({ painted: true, wake: false });
+    await page.evaluate(() => {
+      (window as unknown as { hold: string }).hold = "band";
+    });
+    await page.addScriptTag({ path: pages.script });
+    await page.waitForFunction(() => !document.querySelector("noscript"));
+    const figure = page.locator('[data-cell="band"]');
+    expect(await figure.locator(".drawing polyline").count()).toBe(3);
+    expect(await figure.locator(".foot .line").textContent()).toContain("shown as the file holds it");
+  });
+});
+
+describe("texts from outside", () => {
+  test("none becomes markup or runs, in any place of the live page", async () => {
+    const page = await pages.open({ hash: `#site=${encodeURIComponent("<img src=x onerror=window.ran=1>")}&<b>=1` });
+    await page.evaluate(() => {
+      const evil = '</textarea><script>window.ran=1</script><img src=x onerror="window.ran=1">';
+      const { sample } = window;
+      sample.set("profile", evil);
+      for (const given of sample.givens)
+        Object.assign(given, { label: evil, why: evil, refusal: { entered: evil, message: evil } });
+      sample.put("line 1", { value: { shows: "head", document: evil, title: evil, facts: [[evil, evil]] } });
+      sample.put("line 50", {
+        value: { shows: "note", markdown: `## ${evil}\n\n[x](javascript:window.ran=1) ${evil}` },
+      });
+      sample.put("trade", {
+        source: evil,
+        value: {
+          shows: "table",
+          title: evil,
+          basis: evil,
+          columns: [{ label: evil }],
+          rows: [
+            { label: evil, under: evil, cells: [{ text: evil, word: evil }] },
+            { label: evil, cells: evil },
+          ],
+        },
+      });
+      sample.put("line 85", { value: { shows: "margin", mark: "warning", markdown: evil } });
+      sample.put("lonely", { failure: { reason: evil, cell: evil, file: evil, line: 1, path: [evil, evil] } });
+    });
+    for (const summary of await page.locator("summary").all()) if (await summary.isVisible()) await summary.click();
+    await frames(page);
+    expect(await page.locator("#study script, #study img, #study b, #study a[href^=javascript]").count()).toBe(0);
+    expect(await page.evaluate(() => (window as unknown as { ran?: number }).ran)).toBeUndefined();
+    expect(await page.textContent("h1")).toContain("<script>window.ran=1</script>");
+    expect(await page.inputValue("#given-site")).toContain("<img");
+  });
+});
+
 describe("where things stand", () => {
   test("at 1440 px a note begins at its row or figure, and no two overlap", async () => {
     const page = await pages.open({ hash: "#bandLow=8.025%20GHz" });
@@ -348,7 +429,7 @@ describe("for everyone", () => {
   });
 
   test("the page's own code stays light", () => {
-    // The budget of a whole exported study is 700 kB; prose alone (marked) is about 41 kB of this.
+    // The budget of a whole exported study is 700 kB; reading Markdown (marked) is 52 kB of this.
     expect(pages.weight.script).toBeLessThan(90_000);
     expect(pages.weight.style).toBeLessThan(24_000);
   });

@@ -9,11 +9,14 @@ declare global {
   interface Window {
     sample: FakeStudy;
     kept: Record<string, string>[];
+    /** a cell that has no value yet when the page mounts */
+    hold?: string;
   }
 }
 
 window.kept = [];
 window.sample = sampleStudy();
+if (window.hold) Object.assign(window.sample.cell(window.hold), { value: undefined, state: "working" });
 const options: PageOptions = {
   keep: (texts) => {
     window.kept.push(texts);
