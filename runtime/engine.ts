@@ -102,9 +102,10 @@ class RunningStudy implements Study {
     for (const [name, reading] of readings) {
       const record = this.record(name);
       if (this.desk.enter(name, reading)) moved.push(record);
-      this.noteChange(record);
+      this.listeners.note(record.view);
     }
     this.moveGivens(moved);
+    this.afterEvent();
     return { ok: true };
   }
 
@@ -383,16 +384,17 @@ class RunningStudy implements Study {
 
   /** Tells listeners once nothing is left that could be evaluated at once, and whoever waits once nothing is under way either. */
   private afterEvent(): void {
-    let due = false;
-    let working = false;
-    for (const record of this.records.values()) {
-      due ||= record.due;
-      working ||= record.run !== undefined;
-    }
-    if (due) return;
-    this.listeners.tellSoon();
-    if (working || this.waiting.length === 0) return;
+    if (this.anyDue()) return;
+    this.listeners.tellSoon(() => !this.anyDue());
+    if (this.waiting.length === 0 || this.some((record) => record.run !== undefined)) return;
     for (const resolve of this.waiting.splice(0)) resolve();
+  }
+
+  private anyDue = (): boolean => this.some((record) => record.due);
+
+  private some(test: (record: CellRecord) => boolean): boolean {
+    for (const record of this.records.values()) if (test(record)) return true;
+    return false;
   }
 }
 

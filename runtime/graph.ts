@@ -53,22 +53,3 @@ function shortestCycle(graph: Graph, start: string): string[] | undefined {
   }
   return undefined;
 }
-
-/** Everything that reads `names`, directly or through others; `names` themselves included. */
-export function downstreamOf(readers: ReadonlyMap<string, ReadonlySet<string>>, names: Iterable<string>): Set<string> {
-  const found = new Set(names);
-  for (const name of found) for (const reader of readers.get(name) ?? []) found.add(reader);
-  return found;
-}
-
-/** The graph turned round: from a node to those that read it. */
-export function readersOf(graph: Graph): Map<string, Set<string>> {
-  const readers = new Map<string, Set<string>>();
-  for (const [name, inputs] of graph) {
-    for (const input of inputs) {
-      const set = readers.get(input) ?? new Set();
-      readers.set(input, set.add(name));
-    }
-  }
-  return readers;
-}

@@ -21,14 +21,17 @@ export class Listeners {
     this.changed.add(view);
   }
 
-  tellSoon(): void {
+  /** Tells in a microtask, unless a new burst has begun by then. */
+  tellSoon(ready: () => boolean): void {
     if (this.telling || this.changed.size === 0) return;
     this.telling = true;
-    queueMicrotask(() => this.tell());
+    queueMicrotask(() => {
+      this.telling = false;
+      if (ready()) this.tell();
+    });
   }
 
   private tell(): void {
-    this.telling = false;
     const changed = [...this.changed];
     this.changed = new Set();
     for (const listener of [...this.listeners]) {
