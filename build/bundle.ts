@@ -38,6 +38,8 @@ export interface BundleOptions {
   /** the notebook that the entry imports as `hornbook:notebook` */
   notebook?: NotebookPlace;
   platform: "node" | "browser";
+  /** one classic script without exports, for a page that has its script inline; a module otherwise */
+  classic?: boolean;
   minify?: boolean;
   sourcemap?: boolean;
   plugins?: esbuild.Plugin[];
@@ -90,14 +92,21 @@ export async function bundleOnce(options: BundleOptions): Promise<Bundle> {
 const REQUIRE =
   'import { createRequire as hornbookRequire } from "node:module"; const require = hornbookRequire(import.meta.url);';
 
-function esbuildOptions({ projectRoot, entry, platform, minify, sourcemap }: BundleOptions): esbuild.BuildOptions {
+function esbuildOptions({
+  projectRoot,
+  entry,
+  platform,
+  classic,
+  minify,
+  sourcemap,
+}: BundleOptions): esbuild.BuildOptions {
   return {
     stdin: { contents: entry, resolveDir: projectRoot, sourcefile: "entry.ts", loader: "ts" },
     absWorkingDir: projectRoot,
     outdir: "out",
     bundle: true,
     write: false,
-    format: "esm",
+    format: classic ? "iife" : "esm",
     platform,
     target: platform === "node" ? ["node20"] : ["es2022"],
     // CommonJS packages may ask for what Node has built in.

@@ -10,7 +10,7 @@ export interface ExportParts {
   /** HTML of the page's root, made headless */
   firstPaint: string;
   style: string;
-  /** the live page's module; none: a still file */
+  /** the live page's classic script, which its workers run too; none: a still file */
   script?: string;
   record: ExportRecord;
   /** packages whose code the script holds, with version and licence */
@@ -75,7 +75,7 @@ export function exportHtml({ title, firstPaint, style, script, record, notices }
     `<div id="study">${firstPaint}</div>`,
     recordElement(record, { still: live === undefined }),
     ...(notices.length === 0 ? [] : [`<!-- The script holds: ${notices.join("; ").replaceAll("--", "- -")} -->`]),
-    ...(live === undefined ? [] : [`<script type="module" id="hornbook-live">${live}</script>`]),
+    ...(live === undefined ? [] : [`<script id="hornbook-live">${live}</script>`]),
     "</body>",
     "</html>",
     "",

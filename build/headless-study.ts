@@ -25,6 +25,7 @@ export interface HeadlessStudy {
 
 /**
  * Evaluates a notebook with the given texts.
+ * @param before looks at the study before anything is evaluated; may throw
  * @throws {Failure} it can't be bundled or loaded; a given isn't there or refuses its text
  */
 export async function evaluateHeadless(
@@ -32,6 +33,7 @@ export async function evaluateHeadless(
   projectRoot: string,
   givens: Record<string, string>,
   progress: Progress,
+  before: (study: Study) => void = () => {},
 ): Promise<HeadlessStudy> {
   progress.say(`${place.label}: bundling`);
   const bundle = await bundleOnce({ projectRoot, entry: NODE_ENTRY, notebook: place, platform: "node" });
@@ -54,6 +56,7 @@ export async function evaluateHeadless(
     await files.remove();
   };
   try {
+    before(study);
     enterGivens(study, givens);
     const leave = study.subscribe(() => progress.say(`${place.label}: ${whereItIs(study)}`));
     progress.say(`${place.label}: evaluating`);

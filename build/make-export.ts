@@ -70,6 +70,7 @@ async function liveScript(evaluated: Bundle, place: NotebookPlace, projectRoot: 
     entry: EXPORT_ENTRY,
     notebook: place,
     platform: "browser",
+    classic: true,
     minify: true,
   });
   if (live.compiled?.source !== evaluated.compiled?.source) {

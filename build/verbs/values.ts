@@ -38,12 +38,14 @@ Exit code: 0 all cells have a value, 1 a cell failed (the others are printed), 2
     const texts = await readSets(args.texts("set"), projectRoot);
     const progress = startProgress();
     try {
-      const { study, close } = await evaluateHeadless(place, projectRoot, texts, progress);
+      let only: string[] | undefined;
+      const { study, close } = await evaluateHeadless(place, projectRoot, texts, progress, (fresh) => {
+        only = chosenCells(fresh, args.texts("only"));
+      });
       try {
-        const only = chosenCells(study, args.texts("only"));
         const values = studyValues(study);
         if (only)
-          values.cells = Object.fromEntries(Object.entries(values.cells).filter(([name]) => only.includes(name)));
+          values.cells = Object.fromEntries(Object.entries(values.cells).filter(([name]) => only?.includes(name)));
         progress.end();
         if (args.switch("csv")) {
           for (const { cell, reason } of values.failed) {

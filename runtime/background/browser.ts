@@ -3,11 +3,15 @@ import type { FromWorker, ToWorker } from "./messages.ts";
 import type { WorkerHandle } from "./pool.ts";
 import type { ServePort } from "./serve.ts";
 
-/** Makes workers of a module script. `text` goes through a Blob, which is how a single file brings its worker along. */
+/**
+ * Makes workers of a module script at an address, or of the text of a classic script. Text goes through a Blob, which is how a
+ * single file brings its worker along; Chromium refuses module workers of a Blob to a page opened from a file.
+ */
 export function browserSpawn(script: { url: string } | { text: string }): () => WorkerHandle {
   const url = "url" in script ? script.url : URL.createObjectURL(new Blob([script.text], { type: "text/javascript" }));
+  const type = "url" in script ? "module" : "classic";
   return () => {
-    const worker = new Worker(url, { type: "module", name: "hornbook background" });
+    const worker = new Worker(url, { type, name: "hornbook background" });
     return {
       post: (message) => worker.postMessage(message),
       listen(receive, ended) {

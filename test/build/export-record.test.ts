@@ -4,7 +4,7 @@ import { expect, test } from "vitest";
 import { looksExported, makeRecord, readRecord, recordElement } from "../../build/export-record.ts";
 
 const nasty =
-  "</script><script>alert(1)</script> <!-- <template></template> &lt; & \" ' ` ${x} \u2028 \u2029 \\ \0 😀 \r\n\t";
+  "</script><script>alert(1)</script> <!-- <template></template> &lt; & \" ' ` $" + "{x} \u2028 \u2029 \\ \0 😀 \r\n\t";
 const record = makeRecord({
   version: "0.1.0",
   exported: "2031-05-06T07:08:09.000Z",
