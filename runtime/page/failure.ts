@@ -3,6 +3,7 @@
 import type { CellView } from "../study.ts";
 import { html } from "./dom.ts";
 import { stateTag } from "./state-mark.ts";
+import { typeset } from "./typography.ts";
 import { capital } from "./words.ts";
 
 function sentence(text: string): string {
@@ -25,7 +26,7 @@ export function failureLine(document: Document, cell: CellView, tagged = true): 
     code(failure.cell),
     ", ",
     html(document, "span", { class: "place" }, `${failure.file}:${failure.line}`),
-    `: ${sentence(failure.reason)}`,
+    `: ${typeset(sentence(failure.reason))}`,
   );
   const path = failure.path.length > 1 ? failure.path : [];
   if (path.length > 0) {
