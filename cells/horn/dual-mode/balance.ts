@@ -1,0 +1,47 @@
+// The mode ratio of a dual-mode mouth: as much TM11 as makes E- and H-plane equal at the rim.
+
+import type { Complex } from "../../math/complex.ts";
+import { patternInterpolant } from "../../pattern/interpolant.ts";
+import { aperturePattern } from "../../radiation/aperture-pattern.ts";
+import type { Flare } from "../flare.ts";
+import { coarseThetaCountFor } from "../kind.ts";
+import { te11Pattern } from "../smooth/model.ts";
+
+/** A mouth with TE11 and TM11 in phase, both planes alike at the rim. */
+export interface BalancedMouth {
+  /** |TM11|/|TE11|, power waves; 0 or below where TE11's E-plane is not narrower than its H-plane at the rim */
+  ratio: number;
+  /** dB, positive: fall from boresight to the rim, in both planes */
+  taperDb: number;
+}
+
+/**
+ * Solves |E_TE + r·E_TM|² = |H_TE + r·H_TM|² at the rim angle for the positive r, on the closed-form patterns.
+ *
+ * With a flat mouth TM11 radiates nothing in the H-plane and on boresight; the spherical phase of a flare makes it a few
+ * hundredths of a decibel, so both planes and boresight carry it here.
+ */
+export function balancedMouth(flare: Flare, frequency: number, halfAngle: number): BalancedMouth {
+  const thetaCount = coarseThetaCountFor(flare.radius, frequency);
+  const te = patternInterpolant(te11Pattern(flare, frequency, thetaCount));
+  const amplitudes = { re: Float64Array.of(1, 1), im: new Float64Array(2) };
+  const modes = { frequency, radius: flare.radius, modePairs: 1, amplitudes, warnings: [] };
+  const both = patternInterpolant(aperturePattern(modes, { flareSlant: flare.slant, thetaCount }));
+  const [e, h, axis] = [te.ePlane(halfAngle), te.hPlane(halfAngle), te.copolar45(0)];
+  const eTm = difference(both.ePlane(halfAngle), e);
+  const hTm = difference(both.hPlane(halfAngle), h);
+  const axisTm = difference(both.copolar45(0), axis);
+  // a r² + 2 b r + c = 0
+  const a = power(eTm) - power(hTm);
+  const b = product(e, eTm) - product(h, hTm);
+  const c = power(e) - power(h);
+  const ratio = (-b + Math.sqrt(Math.max(0, b * b - a * c))) / a;
+  const at = (te11: Complex, tm11: Complex): number =>
+    (te11.re + ratio * tm11.re) ** 2 + (te11.im + ratio * tm11.im) ** 2;
+  return { ratio, taperDb: 10 * Math.log10(at(axis, axisTm) / at(h, hTm)) };
+}
+
+const difference = (p: Complex, q: Complex): Complex => ({ re: p.re - q.re, im: p.im - q.im });
+const power = ({ re, im }: Complex): number => re * re + im * im;
+/** Re p q* */
+const product = (p: Complex, q: Complex): number => p.re * q.re + p.im * q.im;
