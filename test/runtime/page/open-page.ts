@@ -91,3 +91,10 @@ export async function samplePages(): Promise<SamplePages> {
     },
   };
 }
+
+/** Two frames: what was entered has been evaluated and shown. */
+export const frames = (page: Page): Promise<unknown> =>
+  page.evaluate(() => new Promise((resolve) => requestAnimationFrame(() => requestAnimationFrame(resolve))));
+
+/** What the page has asked of the study so far. */
+export const calls = (page: Page): Promise<string[]> => page.evaluate(() => window.sample.calls);

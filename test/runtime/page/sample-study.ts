@@ -1,4 +1,4 @@
-// A made-up study with every kind of thing a page shows and all four states. Its numbers are invented.
+// A made-up study with every kind of thing a page shows and all four states. Its numbers are invented. Long because it is data.
 
 import type { Drawing, Figure, Table } from "../../../runtime/shown.ts";
 import { type FakeCell, type FakeGiven, FakeStudy } from "./fake-study.ts";
