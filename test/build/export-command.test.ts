@@ -117,7 +117,7 @@ test("export: with scripts a turned given gives the numbers of `values`", async 
   const turned = await headless(["--set", "outer=2.5 m"]);
   expectAlike(await pageValues(page), turned);
   const cell = page.locator("body");
-  await expect.poll(() => cell.innerText()).toContain((turned.cells.area as number).toFixed(6));
+  await expect.poll(() => cell.innerText(), { timeout: 20_000 }).toContain((turned.cells.area as number).toFixed(6));
   expect(complaints).toEqual([]);
   await close();
 });
