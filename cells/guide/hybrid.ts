@@ -14,7 +14,7 @@ import { requireNumber, requirePositive } from "../check.ts";
 import { speedOfLight } from "../constants.ts";
 import { besselIRatio, besselJ0, besselJ2, besselJPrime1 } from "../math/bessel.ts";
 import { besselPrimeZero, besselZero } from "../math/bessel-zeros.ts";
-import { brentRoot } from "../math/roots.ts";
+import { brentMinimum, brentRoot } from "../math/roots.ts";
 import { requireSlot, type Slot, slotField } from "./slot.ts";
 
 /** A corrugated wall, uniform along z. */
@@ -113,8 +113,16 @@ export function hybridMode(name: HybridName, wall: CorrugatedWall, frequency: nu
     low = -1;
     while (f(low) * f(high) > 0 && low > -1e8 * ka * ka) low *= 4;
   }
-  if (low >= high || f(low) * f(high) > 0) return null;
-  const t = brentRoot(f, low, high, { tolerance: 1e-14 * Math.max(1, Math.abs(low), high) });
+  if (low >= high) return null;
+  let end = high;
+  if (f(low) * f(high) > 0) {
+    // Near cutoff two roots can lie close together: a forward wave and, at smaller β, a backward one. Take the forward.
+    const side = Math.sign(f(low));
+    const dip = name === "EH11" ? null : brentMinimum((t) => side * f(t), low, high, { tolerance: 1e-10 * high });
+    if (!dip || dip.value > 0) return null;
+    end = dip.x;
+  }
+  const t = brentRoot(f, low, end, { tolerance: 1e-14 * Math.max(1, Math.abs(low), high) });
   return modeAt(name, { frequency, radius: wall.innerRadius, t });
 }
 
@@ -163,7 +171,8 @@ export function balancedLikeMode(at: { frequency: number; radius: number; hybrid
  * away from HE11: the upper end of a corrugated guide's clean band.
  *
  * On a capacitive wall HE11 starts as TE11 does (ka = j′11); EH12 starts where J1′(ka)/J1(ka) meets the slot's
- * admittance, between the TM11 and TE12 cutoffs of a smooth guide.
+ * admittance, between the TM11 and TE12 cutoffs of a smooth guide. Where those two conditions nearly coincide it starts a
+ * little earlier and at β > 0, together with a backward wave.
  *
  * @throws {RangeError} as `hybridMode`
  * @accuracy 1e-12 relative

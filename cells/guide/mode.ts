@@ -60,6 +60,16 @@ export function cutoffRadius(mode: GuideMode, frequency: number): number {
   return (transverseNumber(mode) * speedOfLight) / (2 * Math.PI * frequency);
 }
 
+/**
+ * Band in which a circular guide is usually used with TE11, Hz: 1.150 to 1.577 times the TE11 cutoff. The upper end lies
+ * beyond the TM01 cutoff (1.306 times) and short of TE21 (1.659 times): it relies on nothing exciting TM01.
+ * @source rule behind the bands of IEC 60153-4, circular waveguides; common practice, not a law
+ */
+export function usualBand(radius: number): { low: number; high: number } {
+  const cutoff = cutoffFrequency(TE11, radius);
+  return { low: 1.15 * cutoff, high: 1.577 * cutoff };
+}
+
 /** γ² = kc² − k², 1/m²: negative while the mode travels. */
 function propagationSquared(where: string, mode: GuideMode, radius: number, frequency: number): number {
   requirePositive(`${where}: radius`, radius, "m");
