@@ -62,7 +62,7 @@ export function wallNotes({ profile }: SectionedHorn): WallNote[] {
 
 /** Length of the cylinder that begins at a step, m. */
 function straightAfter({ z, radius }: SectionedHorn["profile"], at: number): number {
-  const start = z.lastIndexOf(at);
+  const start = z.findLastIndex((one) => Math.abs(one - at) <= 1e-9);
   let end = start;
   while (end + 1 < z.length && Math.abs(radius[end + 1]! - radius[start]!) < 1e-9) end++;
   return z[end]! - at;
@@ -77,7 +77,7 @@ export function sideRoom(horn: SectionedHorn, scale: number): { left: number; ri
     const widest = Math.max(...note.lines.map((line) => textWidth(line, noteSize)));
     return widest + noteGap + widestBetween(outer, note.z - height / scale, note.z + noteLeading / scale) * scale;
   });
-  return { left: Math.max(half + 12, ...notes), right: half + 34 };
+  return { left: Math.max(half, ...notes), right: half + 34 };
 }
 
 /** Largest radius of an outline between two heights, m. */
@@ -126,7 +126,7 @@ export function hornSection(pen: Pen, horn: SectionedHorn, place: SectionPlace):
     "g",
     {},
     pen("path", {
-      d: `M${coordinate(axisX - half - 12)} ${coordinate(mouthY)}H${coordinate(lengthX + 8)}`,
+      d: `M${coordinate(axisX - half)} ${coordinate(mouthY)}H${coordinate(lengthX + 8)}`,
       stroke: hairline,
       "stroke-dasharray": "3 3",
     }),

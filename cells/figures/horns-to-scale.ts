@@ -73,7 +73,7 @@ function rows(horns: readonly DrawnHorn[]): (string | number)[][] {
   return [head, ...body];
 }
 
-const leastGap = 14;
+const leastGap = 24;
 
 /** Width of each place of a row at a scale, px. */
 function placeWidths(row: readonly DrawnHorn[], scale: number): number[] {

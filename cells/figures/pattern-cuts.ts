@@ -5,15 +5,13 @@ import type { FeedKind } from "../horn/horn-profile.ts";
 import { crossPolarPeakAt, levelAt, levelFloorDb, type PatternLevel } from "../pattern/cuts.ts";
 import type { FeedPattern } from "../pattern/feed-pattern.ts";
 import { toDeg } from "../units.ts";
+import { type CutSeries, cutPanel, measuredWords } from "./cut-panel.ts";
 import type { Drawing } from "./drawing.ts";
-import type { Axis } from "./kit/axis.ts";
 import { columns } from "./kit/columns.ts";
-import { aboveFloor, chosenPoints } from "./kit/curve-points.ts";
-import { type CutLevels, cutLevels } from "./kit/cut-levels.ts";
+import { cutLevels } from "./kit/cut-levels.ts";
 import { legendRow } from "./kit/legend.ts";
-import { limitWords } from "./kit/limit-words.ts";
 import { cutStroke, kindStyle, type LineStyle, lineStroke, secondary, textSize } from "./kit/palette.ts";
-import { band, curve, limitLine, marks, panel, panelRoom, uprights } from "./kit/panel.ts";
+import { panelRoom } from "./kit/panel.ts";
 import { drawingRoot, type Pen, svgPen, text, textBlock } from "./kit/svg.ts";
 import { wrapText } from "./kit/text-width.ts";
 import { unrealizable } from "./kit/unrealizable.ts";
@@ -47,12 +45,8 @@ export interface PatternCutsOptions {
   thetaMax?: number;
 }
 
-const floorDb = -45;
-
-interface Series {
+interface Series extends CutSeries {
   model?: string;
-  style: LineStyle;
-  levels: CutLevels;
   atRim: PatternLevel;
   peak: { levelDb: number; theta: number };
 }
@@ -101,7 +95,7 @@ function placesOf(entries: readonly (CutEntry | CutGap)[], halfAngle: number, th
   for (const entry of entries) {
     let place = places.find(({ label }) => label === entry.label);
     if (!place) places.push((place = { label: entry.label, kind: entry.kind, series: [] }));
-    if ("reason" in entry) {
+    if (!("pattern" in entry)) {
       place.reason = entry.reason;
       continue;
     }
@@ -165,7 +159,11 @@ function draw(pen: Pen, width: number, alt: string, known: Known): Element {
       { words: "cross-polar, 45°", ...cutStroke.cross },
       ...several
         .slice(1)
-        .map(({ model = "another model", style }) => ({ words: model, ...lineStroke[style], dash: undefined })),
+        .map(({ model = "another model", style }) => ({
+          words: style === "measured" ? `${model}: ${measuredWords}` : model,
+          ...lineStroke[style],
+          dash: undefined,
+        })),
     ],
     `dB below the axis${frequency === undefined ? "" : `, ${gigahertz(frequency)} GHz`}`,
   );
@@ -200,77 +198,17 @@ function onePlace(
     const words = unrealizable(pen, box.left, box.top + 24, box.width, reason ?? "");
     return { elements: [title, words.element], bottom: words.bottom };
   }
-  const { thetaMax, halfAngle, crossPolarLimitDb } = known;
-  const endDeg = toDeg(thetaMax);
-  const every = endDeg > 120 ? 60 : endDeg > 45 ? 30 : 15;
-  const x: Axis = {
-    domain: [0, endDeg],
-    ticks: Array.from({ length: Math.floor(endDeg / every + 1e-9) + 1 }, (_, i) => i * every),
-    format: (value) => `${value}°`,
-  };
-  const y: Axis = {
-    domain: [floorDb, 0],
-    ticks: [0, -10, -20, -30, -40],
-    format: (value) => (value === 0 ? "0 dB" : decimal(value, 0)),
-  };
   const frame = {
     left: box.left + panelRoom.left,
     top: box.top + 20,
     width: box.width - panelRoom.left - panelRoom.right,
     height: box.height,
   };
-  const rimDeg = toDeg(halfAngle);
-  const first = series[0]!;
-  const over = [...series].reverse().flatMap((one) => cutsOf(one, kind));
-  const rimDots = [first.atRim.ePlaneDb, first.atRim.hPlaneDb].filter((level) => level >= floorDb);
-  const drawn = panel(
-    pen,
-    frame,
-    { x, y },
-    {
-      under: [band(rimDeg, endDeg)],
-      over: [
-        ...(crossPolarLimitDb === undefined || crossPolarLimitDb < floorDb ? [] : [limitLine(crossPolarLimitDb)]),
-        uprights([rimDeg]),
-        ...over,
-        marks(
-          rimDots.map((level) => [rimDeg, level]),
-          "circle",
-          "#1f2a33",
-          3,
-        ),
-      ],
-    },
-  );
-  const elements = [title, drawn.element];
-  const rimX = drawn.xAt(rimDeg);
-  elements.push(text(pen, rimX + 5, frame.top + 13, `rim ${degrees(halfAngle)}`, { size: textSize.axis }));
-  if (crossPolarLimitDb !== undefined && crossPolarLimitDb >= floorDb) {
-    const curves = series.flatMap(({ levels: { thetaDeg, ...cuts } }) =>
-      Object.values(cuts).map((levels) => aboveFloor(thetaDeg, levels, floorDb)),
-    );
-    const words = `asked: ≤ ${decimal(crossPolarLimitDb, 0)}`;
-    elements.push(limitWords(pen, words, crossPolarLimitDb, { frame, drawn, curves, uprights: [rimDeg] }));
-  }
+  const drawn = cutPanel(pen, frame, series, { ...known, color: kindStyle(kind).line, rimDots: series[0]!.atRim });
   const lines = series.flatMap(({ model, atRim }) =>
     wrapText(`${series.length > 1 && model ? model : "at the rim"}: ${rimWords(atRim)}`, box.width, textSize.drawing),
   );
   const below = frame.top + frame.height + 44;
-  elements.push(textBlock(pen, box.left, below, lines, { fill: secondary }));
-  return { elements, bottom: below + (lines.length - 1) * 17 };
-}
-
-function cutsOf({ style, levels }: Series, kind: FeedKind) {
-  const { thetaDeg, ePlaneDb, hPlaneDb, crossPolarDb } = levels;
-  const { width, color = kindStyle(kind).line } = lineStroke[style];
-  const cuts = [
-    { y: crossPolarDb, stroke: cutStroke.cross },
-    { y: hPlaneDb, stroke: cutStroke.h },
-    { y: ePlaneDb, stroke: cutStroke.e },
-  ] as const;
-  return cuts.map(({ y, stroke }) => {
-    const points = aboveFloor(thetaDeg, y, floorDb);
-    if (style === "measured") return marks(chosenPoints(points, 24), "times", color, 2.4);
-    return curve(points, { color, width: style === "full" ? stroke.width : width, dash: stroke.dash });
-  });
+  const words = textBlock(pen, box.left, below, lines, { fill: secondary });
+  return { elements: [title, ...drawn, words], bottom: below + (lines.length - 1) * 17 };
 }

@@ -23,7 +23,7 @@ export function limitWords(
   const y = drawn.yAt(at);
   const [first, last] = [frame.left + 4, frame.left + frame.width - width - 4];
   const lefts = [0, 0.25, 0.5, 0.75, 1].map((share) => last + share * (first - last));
-  const fits = (top: number): boolean => top >= frame.top && top + height <= frame.top + frame.height;
+  const fits = (top: number): boolean => top >= frame.top - 4 && top + height <= frame.top + frame.height;
   const tops = [y - height - 3, y + 3].filter(fits);
   const boxes = tops.flatMap((top) => lefts.map((left) => ({ left, top, width, height })));
   const inPx = curves.map((points) => points.map(([px, py]): Point => [drawn.xAt(px), drawn.yAt(py)]));

@@ -35,7 +35,7 @@ export function wallFeatures(profile: HornProfile): WallFeatures {
   for (let i = 1; i < points.length; i++) {
     const [z0, from] = points[i - 1]!;
     const [z1, to] = points[i]!;
-    if (z1 - z0 > 0 || to === from) continue;
+    if (z1 > z0 || to === from) continue;
     const last = jumps.at(-1);
     if (last && last.z === z1 && last.to === from) last.to = to;
     else jumps.push({ z: z1, from, to });
@@ -52,22 +52,27 @@ export function wallFeatures(profile: HornProfile): WallFeatures {
   return features;
 }
 
-/** Points without repetitions. */
+/** Two points nearer than this along the axis are taken as one z, m: far below any tolerance, far above rounding. */
+const abrupt = 1e-9;
+
+/** Points without repetitions, steps at exactly one z. */
 function pointsOf({ z, radius }: HornProfile): ZR[] {
   if (z.length !== radius.length || z.length < 2)
     throw new RangeError(
       `horn profile: must have as many z as radii, at least two; got ${z.length} and ${radius.length}`,
     );
   const points: ZR[] = [];
-  z.forEach((at, i) => {
+  z.forEach((given, i) => {
     const r = radius[i]!;
-    if (!(r > 0) || !Number.isFinite(at))
+    if (!(r > 0) || !Number.isFinite(r) || !Number.isFinite(given))
       throw new RangeError(
-        `horn profile: point ${i + 1} must have a finite z and a positive radius in m; got z ${at}, radius ${r}`,
+        `horn profile: point ${i + 1} must have a finite z and a positive radius in m; got z ${given}, radius ${r}`,
       );
     const last = points.at(-1);
-    if (last && at < last[0]) throw new RangeError(`horn profile: z must not fall; got ${at} m after ${last[0]} m`);
-    if (!last || last[0] !== at || last[1] !== r) points.push([at, r]);
+    if (last && given < last[0] - abrupt)
+      throw new RangeError(`horn profile: z must not fall; got ${given} m after ${last[0]} m`);
+    const at = last && given - last[0] <= abrupt ? last[0] : given;
+    if (!last || last[0] !== at || Math.abs(last[1] - r) > abrupt) points.push([at, r]);
   });
   return points;
 }
@@ -108,8 +113,11 @@ export function outerWall(profile: HornProfile, wall: number): ZR[] {
   covered.forEach(([z, r], i) => {
     const before = covered[i - 1];
     const after = covered[i + 1];
-    const rises = (after && after[0] === z && after[1] > r) || (before && before[0] === z && r > before[1]);
-    const falls = (after && after[0] === z && after[1] < r) || (before && before[0] === z && r < before[1]);
+    const up = (a: ZR | undefined, b: ZR | undefined) => a && b && b[0] === a[0] && b[1] > a[1];
+    const down = (a: ZR | undefined, b: ZR | undefined) => a && b && b[0] === a[0] && b[1] < a[1];
+    const here: ZR = [z, r];
+    const rises = up(here, after) || up(before, here);
+    const falls = down(here, after) || down(before, here);
     const shift = rises && !falls ? -wall : falls && !rises ? wall : 0;
     moved.push([Math.min(0, Math.max(start, z + shift)), r + wall]);
   });

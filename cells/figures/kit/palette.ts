@@ -19,7 +19,7 @@ export const sansStack = "Avenir Next, Segoe UI, Helvetica Neue, Liberation Sans
 /** px */
 export const textSize = { title: 13.5, drawing: 12.5, axis: 12, small: 11.5 } as const;
 
-export type MarkShape = "circle" | "square" | "triangle" | "diamond" | "times" | "hexagon";
+export type MarkShape = "circle" | "square" | "triangle" | "diamond" | "times" | "plus" | "hexagon";
 
 export interface KindStyle {
   /** lines, bars and marks */

@@ -93,14 +93,14 @@ export function curve(points: readonly Point[], { color, width, dash }: Stroke):
   });
 }
 
-/** Open marks on a curve; a cross has no inside. */
+/** Open marks on a curve; a cross or a plus has no inside. */
 export function marks(points: readonly Point[], shape: MarkShape, color: string, radius = 3): Markish {
   return dot(points, {
     x: "0",
     y: "1",
     symbol: shape,
     r: radius,
-    fill: shape === "times" ? "none" : paper,
+    fill: shape === "times" || shape === "plus" ? "none" : paper,
     stroke: color,
     strokeWidth: 1.3,
   });

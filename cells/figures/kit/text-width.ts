@@ -22,15 +22,24 @@ export function textWidth(words: string, size: number, bold = false): number {
   return (sum / 1000) * size * allowance * (bold ? 1.06 : 1);
 }
 
-/** Breaks a text into lines no wider than `width` px; a single word that is wider stands alone. */
+// Words that belong to the number before them: breaking there would leave a line to begin with "GHz".
+const unitWord = /^(?:%|°|(?:[kMGTmµ]?(?:Hz|m|W|V|s|g|K|rad)|dB\S*|deg|λ)[²³]?)[.,;:)]*$/;
+
+/** Breaks a text into lines no wider than `width` px, not between a number and its unit; a single word that is wider stands alone. */
 export function wrapText(words: string, width: number, size: number): string[] {
+  const pieces: string[] = [];
+  for (const word of words.split(/ +/)) {
+    const last = pieces.at(-1);
+    if (last !== undefined && /\d$/.test(last) && unitWord.test(word)) pieces[pieces.length - 1] = `${last} ${word}`;
+    else pieces.push(word);
+  }
   const lines: string[] = [];
   let line = "";
-  for (const word of words.split(/ +/)) {
-    const longer = line ? `${line} ${word}` : word;
+  for (const piece of pieces) {
+    const longer = line ? `${line} ${piece}` : piece;
     if (line && textWidth(longer, size) > width) {
       lines.push(line);
-      line = word;
+      line = piece;
     } else line = longer;
   }
   if (line) lines.push(line);
