@@ -9,6 +9,7 @@ import { readRecord } from "../../build/export-record.ts";
 import { assertClose } from "../assert-close.ts";
 import { launchBrowser } from "../browser.ts";
 import { fixtures, isOneSentence, ownFolder, projectRoot, run, smallNotebook, writeNotebook } from "./run-command.ts";
+import { shownText } from "./shown-text.ts";
 
 let browser: Browser;
 beforeAll(async () => {
@@ -79,7 +80,7 @@ test("export: with scripts off the results can be read", async () => {
   expect([code, out]).toEqual([0, ""]);
   expect(err).toMatch(/^small\.html: \d+ kB, live\n$/);
   const { page, complaints, close } = await openFile(join(folder, "small.html"), { scripts: false });
-  const text = await page.locator("body").innerText();
+  const text = await shownText(page);
   const { cells } = await headless([]);
   expect(await page.title()).toBe("A ring of sheet metal");
   for (const words of [
@@ -117,7 +118,7 @@ test("export: with scripts a turned given gives the numbers of `values`", async 
   const turned = await headless(["--set", "outer=2.5 m"]);
   expectAlike(await pageValues(page), turned);
   const cell = page.locator("body");
-  await expect.poll(() => cell.innerText(), { timeout: 20_000 }).toContain((turned.cells.area as number).toFixed(6));
+  await expect.poll(() => shownText(cell), { timeout: 20_000 }).toContain((turned.cells.area as number).toFixed(6));
   expect(complaints).toEqual([]);
   await close();
 });
@@ -144,7 +145,7 @@ test("export: a still file has no script at all and reads the same", async () =>
   expect(html).not.toMatch(/<script|javascript:|\son[a-z]+=/i);
   expect(html).toContain("script-src 'none'");
   const { page, complaints, close } = await openFile(join(folder, "still.html"), { scripts: true });
-  expect(await page.locator("body").innerText()).toContain("Deburr the edges");
+  expect(await shownText(page)).toContain("Deburr the edges");
   expect(await page.locator("input, button, select").count()).toBe(0);
   expect(complaints).toEqual([]);
   await close();
@@ -210,7 +211,7 @@ test("export: a failed cell is told, the rest is written, exit 1", async () => {
   expect(code).toBe(1);
   expect(err).toContain("area failed: ringArea: inner must be below outer (1.2 m); got 1.5 m");
   const { page, close } = await openFile(join(folder, "small.html"), { scripts: false });
-  const text = await page.locator("body").innerText();
+  const text = await shownText(page);
   expect(text).toContain("ringArea: inner must be below outer");
   expect(text).toContain("Deburr the edges");
   await close();

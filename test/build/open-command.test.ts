@@ -8,6 +8,7 @@ import { afterAll, beforeAll, expect, test } from "vitest";
 import { openingCommand } from "../../build/browser.ts";
 import { launchBrowser } from "../browser.ts";
 import { copySmall, isOneSentence, ownFolder, run, runOpen, smallNotebook, writeNotebook } from "./run-command.ts";
+import { shownText } from "./shown-text.ts";
 
 let browser: Browser;
 beforeAll(async () => {
@@ -66,7 +67,7 @@ async function save(path: string, change: (text: string) => string): Promise<voi
 test("open: the page shows the study, works in the background, keeps to its policy", async () => {
   const { url } = await runOpen([smallNotebook]);
   const { page, complaints } = await openPage(url);
-  await eventually(() => page.locator("body").innerText()).toContain("The ring, to scale.");
+  await eventually(() => shownText(page)).toContain("The ring, to scale.");
   const headless = JSON.parse((await run(["values", smallNotebook])).out);
   expect((await values(page))?.cells).toEqual(headless.cells);
   expect(await page.evaluate(() => crossOriginIsolated)).toBe(true);
@@ -94,7 +95,7 @@ test("open: a save is taken up; givens stay, untouched cells aren't evaluated ag
   expect((await values(page))?.givens).toMatchObject({ outer: 2, inner: 0.3 });
   expect(await evaluations(page, "sum")).toBe(sums);
   expect(await page.evaluate(() => (globalThis as { sameDocument?: boolean }).sameDocument)).toBe(true);
-  await eventually(() => page.locator("body").innerText()).toMatch(/122\.84\skg/);
+  await eventually(() => shownText(page)).toMatch(/122\.84\skg/);
   expect(complaints).toEqual([]);
   await page.close();
 });
@@ -126,13 +127,13 @@ test("open: a file that can't be used is told on the page, which stays on the la
   await eventually(() => cell(page, "area")).toBeGreaterThan(4);
   await writeFile(path, good.replace("export const area =", "export const area = = <script>"));
   const panel = page.locator("#hornbook-problems");
-  await eventually(() => panel.innerText()).toMatch(/small\.ts:14/);
+  await eventually(() => shownText(panel)).toMatch(/small\.ts:14/);
   expect(await panel.getAttribute("role")).toBe("alert");
-  expect(await page.locator("body").innerText()).toContain("The ring, to scale.");
+  expect(await shownText(page)).toContain("The ring, to scale.");
   expect(await cell(page, "area")).toBeGreaterThan(4);
   expect(said()).toMatch(/small\.ts:14: /);
   await writeFile(path, good.replace('"./ring.ts"', '"./gone.ts"'));
-  await eventually(() => panel.innerText()).toMatch(/small\.ts:3 imports "\.\/gone\.ts", and there is no such file/);
+  await eventually(() => shownText(panel)).toMatch(/small\.ts:3 imports "\.\/gone\.ts", and there is no such file/);
   await writeFile(path, good.replace("area * 2.7", "area * 3"));
   await eventually(async () => ((await cell(page, "weight")) as { mass: number }).mass).toBeCloseTo(
     3 * Math.PI * (1.44 - 0.09),
@@ -149,11 +150,11 @@ test("open: a notebook that is torn from the start, or away for a moment, is sho
   await writeFile(path, `${good}\nconst torn = (`);
   const { url } = await runOpen([path]);
   const { page } = await openPage(url);
-  await eventually(() => page.locator("#hornbook-problems").innerText()).toContain("can’t be used yet");
+  await eventually(() => shownText(page.locator("#hornbook-problems"))).toContain("can’t be used yet");
   await writeFile(path, good);
   await eventually(() => cell(page, "area")).toBeGreaterThan(4);
   await rm(path);
-  await eventually(() => page.locator("#hornbook-problems").innerText()).toContain("small.ts");
+  await eventually(() => shownText(page.locator("#hornbook-problems"))).toContain("small.ts");
   await writeFile(path, good.replace("area * 2.7", "area * 3"));
   await eventually(async () => ((await cell(page, "weight")) as { mass: number }).mass).toBeCloseTo(
     3 * Math.PI * (1.44 - 0.09),
@@ -214,7 +215,7 @@ test("open: ends at once and cleanly on Ctrl-C, also while a page listens", asyn
   const path = await writeNotebook(folder, "tiny.ts", 'import { note } from "VOCABULARY";\nnote`Hello`;\n');
   const { url, child, ended, said } = await runOpen([path]);
   const { page } = await openPage(url);
-  await eventually(() => page.locator("body").innerText()).toContain("Hello");
+  await eventually(() => shownText(page)).toContain("Hello");
   child.kill("SIGINT");
   expect(await ended).toBe(0);
   expect(said()).toBe("Ctrl-C stops it.\n");
