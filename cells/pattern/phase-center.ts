@@ -45,14 +45,14 @@ export function phaseCenter(pattern: FeedPattern, halfAngle: number): PhaseCente
   const samples = halfAngle / (Math.PI / (pattern.theta.length - 1));
   const rule = gaussLegendre(Math.min(200, Math.max(32, Math.ceil(samples / 2))));
   const theta = Array.from(rule.nodes, (x) => (halfAngle * (1 + x)) / 2);
-  const fit = (cut: (theta: number) => Complex) => {
+  const fitCut = (cut: (theta: number) => Complex) => {
     const field = theta.map(cut);
     const weight = field.map(({ re, im }, i) => rule.weights[i]! * (re * re + im * im) * Math.sin(theta[i]!));
     return fitPhase({ field, weight, cosine: theta.map(Math.cos), k });
   };
-  const copolar = fit(interpolant.copolar45);
-  const e = fit(interpolant.ePlane);
-  const h = fit(interpolant.hPlane);
+  const copolar = fitCut(interpolant.copolar45);
+  const e = fitCut(interpolant.ePlane);
+  const h = fitCut(interpolant.hPlane);
   return {
     z: pattern.phaseOriginZ + copolar.z,
     ePlaneZ: pattern.phaseOriginZ + e.z,
