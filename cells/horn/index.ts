@@ -4,18 +4,23 @@ import { requireNumber, requirePositive } from "../check.ts";
 import type { FeedPattern } from "../pattern/feed-pattern.ts";
 import type { Candidate, RealizableHorn } from "./candidate.ts";
 import { corrugatedHorn } from "./corrugated/dimension.ts";
+import type { CorrugatedGeometry } from "./corrugated/geometry.ts";
 import { corrugatedAttenuation } from "./corrugated/loss.ts";
-import { corrugatedPattern } from "./corrugated/model.ts";
+import { corrugatedMouth, corrugatedPattern } from "./corrugated/model.ts";
 import { dualModeHorn } from "./dual-mode/dimension.ts";
-import { dualModeAttenuation, dualModePattern } from "./dual-mode/model.ts";
+import type { DualModeGeometry } from "./dual-mode/geometry.ts";
+import { dualModeAttenuation, dualModeMouth, dualModePattern } from "./dual-mode/model.ts";
 import type { FeedKind } from "./horn-profile.ts";
 import { type HornKind, thetaCountFor } from "./kind.ts";
+import type { MouthTerm } from "./mouth-field.ts";
 import type { FeedRequirement, HornLimits } from "./requirement.ts";
 import { smoothHorn } from "./smooth/dimension.ts";
-import { smoothAttenuation, smoothPattern } from "./smooth/model.ts";
+import type { SmoothGeometry } from "./smooth/geometry.ts";
+import { smoothAttenuation, smoothMouth, smoothPattern } from "./smooth/model.ts";
 
 export type { Candidate, Dimension, RealizableHorn, UnrealizableHorn } from "./candidate.ts";
 export type { FeedKind, HornProfile } from "./horn-profile.ts";
+export type { MouthTerm } from "./mouth-field.ts";
 export { type FeedRequirement, type HornLimits, largestPhaseError } from "./requirement.ts";
 export { corrugatedHorn, dualModeHorn, smoothHorn };
 
@@ -25,24 +30,34 @@ export type DimensionedKind = "smooth" | "dualMode" | "corrugated";
 /** In the order in which a study lists them. */
 export const dimensionedKinds: readonly DimensionedKind[] = ["smooth", "dualMode", "corrugated"];
 
+const smooth: HornKind<SmoothGeometry> = {
+  dimension: smoothHorn,
+  pattern: smoothPattern,
+  mouth: smoothMouth,
+  attenuation: smoothAttenuation,
+};
+const dualMode: HornKind<DualModeGeometry> = {
+  dimension: dualModeHorn,
+  pattern: dualModePattern,
+  mouth: dualModeMouth,
+  attenuation: dualModeAttenuation,
+};
+const corrugated: HornKind<CorrugatedGeometry> = {
+  dimension: corrugatedHorn,
+  pattern: corrugatedPattern,
+  mouth: corrugatedMouth,
+  attenuation: corrugatedAttenuation,
+};
+
 const kinds: Record<DimensionedKind, HornKind<unknown>> = {
-  smooth: { dimension: smoothHorn, pattern: smoothPattern, attenuation: smoothAttenuation } as HornKind<unknown>,
-  dualMode: {
-    dimension: dualModeHorn,
-    pattern: dualModePattern,
-    attenuation: dualModeAttenuation,
-  } as HornKind<unknown>,
-  corrugated: {
-    dimension: corrugatedHorn,
-    pattern: corrugatedPattern,
-    attenuation: corrugatedAttenuation,
-  } as HornKind<unknown>,
+  smooth,
+  dualMode,
+  corrugated,
 };
 
 function kindOf(where: string, kind: FeedKind): HornKind<unknown> {
-  const found = kinds[kind as DimensionedKind];
-  if (!found) throw new RangeError(`${where}: kind must be one of ${dimensionedKinds.join(", ")}; got ${String(kind)}`);
-  return found;
+  if (Object.hasOwn(kinds, kind)) return kinds[kind as DimensionedKind];
+  throw new RangeError(`${where}: kind must be one of ${dimensionedKinds.join(", ")}; got ${String(kind)}`);
 }
 
 /**
@@ -64,6 +79,18 @@ export function closedFormPattern(horn: RealizableHorn, frequency: number): Feed
   requirePositive("closedFormPattern: frequency", frequency, "Hz");
   const thetaCount = thetaCountFor(horn.apertureRadius, frequency);
   return kindOf("closedFormPattern", horn.kind).pattern(horn.geometry, frequency, thetaCount);
+}
+
+/**
+ * The modes at a dimensioned horn's mouth by the closed form of its kind, for 1 W of TE11 at its throat, before the phase of
+ * the flare. Holds functions: not for sending to a worker.
+ *
+ * @param frequency Hz
+ * @throws {RangeError} as `closedFormPattern`
+ */
+export function mouthTerms(horn: RealizableHorn, frequency: number): MouthTerm[] {
+  requirePositive("mouthTerms: frequency", frequency, "Hz");
+  return kindOf("mouthTerms", horn.kind).mouth(horn.geometry, frequency);
 }
 
 /**

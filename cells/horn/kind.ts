@@ -3,6 +3,7 @@
 import { speedOfLight } from "../constants.ts";
 import type { FeedPattern } from "../pattern/feed-pattern.ts";
 import type { Candidate } from "./candidate.ts";
+import type { MouthTerm } from "./mouth-field.ts";
 import type { FeedRequirement, HornLimits } from "./requirement.ts";
 
 /**
@@ -14,6 +15,8 @@ export interface HornKind<G> {
   dimension(requirement: FeedRequirement, limits?: HornLimits): Candidate;
   /** closed-form pattern for 1 W of TE11 at the throat, less what the model's own step reflects */
   pattern(geometry: G, frequency: number, thetaCount: number): FeedPattern;
+  /** modes at the mouth by the same closed form */
+  mouth(geometry: G, frequency: number): MouthTerm[];
   /** attenuation from throat to mouth, Np; conductivity in S/m */
   attenuation(geometry: G, frequency: number, conductivity: number): number;
 }

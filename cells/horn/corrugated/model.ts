@@ -1,9 +1,11 @@
 // Closed-form model of the corrugated horn: HE11 alone at the mouth, as the last slot makes it, under the flare's phase.
 
-import { hybridMode } from "../../guide/hybrid.ts";
+import { type HybridMode, hybridMode } from "../../guide/hybrid.ts";
+import { hybridField } from "../../guide/hybrid-field.ts";
 import type { FeedPattern } from "../../pattern/feed-pattern.ts";
 import { hybridModePattern } from "../../radiation/hybrid-pattern.ts";
 import type { Flare } from "../flare.ts";
+import type { MouthTerm } from "../mouth-field.ts";
 import { type CorrugatedGeometry, type Corrugation, wallAt } from "./geometry.ts";
 
 /**
@@ -16,12 +18,30 @@ export function he11Pattern(
   frequency: number,
   thetaCount: number,
 ): FeedPattern {
-  const mode = hybridMode("HE11", wallAt(mouth.last, mouth.slotFill), frequency);
-  if (!mode)
-    throw new RangeError(
-      `he11Pattern: HE11 must travel at the mouth; at ${(frequency / 1e9).toFixed(3)} GHz it doesn't on slots ${(mouth.last.depth * 1e3).toFixed(2)} mm deep`,
-    );
-  return hybridModePattern(mode, { flareSlant: mouth.flare.slant, thetaCount });
+  return hybridModePattern(he11At(mouth, frequency), { flareSlant: mouth.flare.slant, thetaCount });
+}
+
+/** @throws {RangeError} HE11 doesn't travel on this wall at this frequency */
+function he11At({ last, slotFill }: { last: Corrugation; slotFill: number }, frequency: number): HybridMode {
+  const mode = hybridMode("HE11", wallAt(last, slotFill), frequency);
+  if (mode) return mode;
+  throw new RangeError(
+    `corrugated: HE11 must travel at the mouth; at ${(frequency / 1e9).toFixed(3)} GHz it doesn't on slots ${(last.depth * 1e3).toFixed(2)} mm deep`,
+  );
+}
+
+export function corrugatedMouth(geometry: CorrugatedGeometry, frequency: number): MouthTerm[] {
+  const last = geometry.corrugations[geometry.corrugations.length - 1]!;
+  const mode = he11At({ last, slotFill: geometry.slotWidth / geometry.pitch }, frequency);
+  return [
+    {
+      name: "HE11",
+      powerShare: 1,
+      phase: 0,
+      amplitude: { re: 1, im: 0 },
+      profile: (rho, phi) => hybridField(mode, rho, phi),
+    },
+  ];
 }
 
 export function corrugatedPattern(geometry: CorrugatedGeometry, frequency: number, thetaCount: number): FeedPattern {

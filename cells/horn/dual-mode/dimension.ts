@@ -46,6 +46,10 @@ const inputDecay = Math.LN10;
  * The step's radii lie in the window where over the whole band TM11 travels behind the step and not before it, and TE12
  * doesn't travel behind it. A dish that asks for a mouth narrower than the window is too deep for this kind.
  *
+ * Against mode matching of a horn of this kind (half flare angle 14°) the closed form's phase between the modes at the mouth is
+ * 25° off at the frequency of balance, which moves that frequency by about 3 %; directivity there agrees to 0.02 dB, and
+ * levels in the main lobe to 0.2 dB (test/cells/horn/dual-mode/model). Below it, near TM11's cutoff, it is rough.
+ *
  * @throws {RangeError} illegal requirement or limits (see `checkedLimits`)
  * @source Potter, "A new horn antenna with suppressed sidelobes and equal beamwidths", Microwave J. 6(6), 71–78, 1963
  */
@@ -202,7 +206,7 @@ function candidate({ geometry }: Attempt, requirement: FeedRequirement, limits: 
   return {
     feasible: true,
     kind: "dualMode",
-    reason: `${met}; TM11 ${(20 * Math.log10(modeRatio)).toFixed(1).replace("-", "−")} dB against TE11 makes both planes equal at the rim${slow}.`,
+    reason: `${met}; TM11 ${(20 * Math.log10(modeRatio)).toFixed(1).replace("-", "−")} dB against TE11 makes both planes equal at the rim${slow}; the closed form places this balance to about 3 % in frequency.`,
     profile: dualModeProfile(geometry),
     throatRadius: geometry.inputRadius,
     apertureRadius: flare.radius,

@@ -1,11 +1,12 @@
 // Closed-form model of the dual-mode horn: TE11 and TM11 as the step launches them, carried to the mouth, radiated.
 
-import { TE11, TM11, travels, wallLoss } from "../../guide/mode.ts";
+import { modeField, modeName, TE11, TM11, travels, wallLoss, waveImpedance } from "../../guide/mode.ts";
 import { integrate } from "../../math/quadrature.ts";
 import type { FeedPattern } from "../../pattern/feed-pattern.ts";
 import type { ApertureModes } from "../../radiation/aperture-modes.ts";
 import { aperturePattern } from "../../radiation/aperture-pattern.ts";
 import { radiusAt } from "../flare.ts";
+import type { MouthTerm } from "../mouth-field.ts";
 import type { DualModeGeometry } from "./geometry.ts";
 import { stepCoupling, stepLaunch } from "./step.ts";
 import { travelToMouth } from "./travel.ts";
@@ -48,6 +49,25 @@ export function dualModeAperture(geometry: DualModeGeometry, frequency: number):
 export function dualModePattern(geometry: DualModeGeometry, frequency: number, thetaCount: number): FeedPattern {
   const modes = dualModeAperture(geometry, frequency);
   return aperturePattern(modes, { flareSlant: geometry.flare.slant, thetaCount });
+}
+
+/** TE11 and TM11 at the mouth. A TM11 cut off there carries no power; its share is then 0. */
+export function dualModeMouth(geometry: DualModeGeometry, frequency: number): MouthTerm[] {
+  const { radius } = geometry.flare;
+  const { re, im } = dualModeAperture(geometry, frequency).amplitudes;
+  const powers = [TE11, TM11].map((mode, i) => (travels(mode, radius, frequency) ? re[i]! ** 2 + im[i]! ** 2 : 0));
+  const all = powers[0]! + powers[1]!;
+  return [TE11, TM11].map((mode, i) => {
+    const impedance = waveImpedance(mode, radius, frequency);
+    const scale = Math.sqrt(2 * Math.hypot(impedance.re, impedance.im));
+    return {
+      name: modeName(mode),
+      powerShare: powers[i]! / all,
+      phase: Math.atan2(im[i]!, re[i]!),
+      amplitude: { re: scale * re[i]!, im: scale * im[i]! },
+      profile: (rho, phi) => modeField(mode, radius, rho, phi),
+    };
+  });
 }
 
 /**

@@ -1,10 +1,11 @@
 // Closed-form model of the smooth-wall cone: TE11 alone at the mouth, under the spherical phase of the flare.
 
-import { TE11, wallLoss } from "../../guide/mode.ts";
+import { modeField, TE11, wallLoss, waveImpedance } from "../../guide/mode.ts";
 import { integrate } from "../../math/quadrature.ts";
 import type { FeedPattern } from "../../pattern/feed-pattern.ts";
 import { aperturePattern } from "../../radiation/aperture-pattern.ts";
 import { type Flare, radiusAt } from "../flare.ts";
+import type { MouthTerm } from "../mouth-field.ts";
 import type { SmoothGeometry } from "./geometry.ts";
 
 /** Pattern of 1 W of TE11 behind a flare. @param thetaCount angles from 0 to π */
@@ -18,6 +19,19 @@ export function te11Pattern(flare: Flare, frequency: number, thetaCount: number)
 
 export function smoothPattern({ flare }: SmoothGeometry, frequency: number, thetaCount: number): FeedPattern {
   return te11Pattern(flare, frequency, thetaCount);
+}
+
+export function smoothMouth({ flare }: SmoothGeometry, frequency: number): MouthTerm[] {
+  const impedance = waveImpedance(TE11, flare.radius, frequency).re;
+  return [
+    {
+      name: "TE11",
+      powerShare: 1,
+      phase: 0,
+      amplitude: { re: Math.sqrt(2 * impedance), im: 0 },
+      profile: (rho, phi) => modeField(TE11, flare.radius, rho, phi),
+    },
+  ];
 }
 
 /** Attenuation of TE11 along the cone, Np: ∫ α(a(z)) dz, the guide taken as straight at each z. 24 Gauss points: 1e-6 relative. */
