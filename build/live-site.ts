@@ -76,6 +76,9 @@ export async function createLiveSite(
       known.imports = await importsDigest(bundle.inputs.filter((path) => path !== place.path));
       known.notebook = publish("notebook", bundle);
       problems = [];
+      for (const { file, line, cell, message } of bundle.compiled?.problems ?? []) {
+        said(`${file}:${line}: ${cell ? `${cell}: ` : ""}${message}`);
+      }
     } catch (error) {
       if (!(error instanceof BundleFailure)) throw error;
       problems = error.places;
