@@ -1,5 +1,5 @@
 // Givens: how a study declares an input, and how text that a person enters becomes its value or a sentence of refusal.
-import { formatQuantity, kindWords, parseQuantity, QuantityError, unitNamed } from "./quantity.ts";
+import { kindWords, parseQuantity, QuantityError, unitNamed } from "./quantity.ts";
 
 /** What a given's declaration evaluates to: plain data, so that a study bundled apart from the engine is still understood. */
 export interface GivenDeclaration {
@@ -16,6 +16,8 @@ export interface GivenDeclaration {
   min?: number;
   max?: number;
   step?: number;
+  /** quantity: the limits as written, for the sentence of a refusal */
+  limits?: [min: string, max: string];
   options?: string[];
   /** text: most characters taken */
   longest?: number;
@@ -41,18 +43,18 @@ export function declareQuantity(text: string, options: QuantityOptions): GivenDe
   const { label, why } = named("given", options, text);
   try {
     const { value, unit, text: defaultText } = parseQuantity(text);
-    const bound = (name: string, entered: string | number | undefined): number => {
+    const bound = (name: "min" | "max" | "step") => {
+      const entered = options[name];
       if (entered === undefined) throw new QuantityError(`needs its ${name}`);
-      return parseQuantity(String(entered), unit).value;
+      return parseQuantity(String(entered), unit);
     };
-    const min = bound("min", options.min);
-    const max = bound("max", options.max);
+    const [{ value: min, text: minText }, { value: max, text: maxText }] = [bound("min"), bound("max")];
     if (!(min < max)) throw new QuantityError(`must have min below max; got ${options.min} and ${options.max}`);
-    const step = options.step === undefined ? undefined : bound("step", options.step) - unit.offset;
+    const step = options.step === undefined ? undefined : bound("step").value - unit.offset;
     if (step !== undefined && !(step > 0)) throw new QuantityError(`must have a positive step; got ${options.step}`);
     const declaration: GivenDeclaration = {
       ...{ declares: "given", form: "quantity", label, why, unit: unit.text, defaultText, default: value, min, max },
-      ...(step === undefined ? {} : { step }),
+      ...{ limits: [minText, maxText], ...(step === undefined ? {} : { step }) },
     };
     readGiven(declaration, defaultText);
     return declaration;
@@ -183,9 +185,6 @@ function readQuantity(given: GivenDeclaration, entered: string): GivenReading {
   }
 }
 
-function between({ min, max, unit }: GivenDeclaration): string {
-  if (min === undefined || max === undefined) return "";
-  return ` between ${formatQuantity(min, unit)} and ${formatQuantity(max, unit)}`;
-}
+const between = ({ limits }: GivenDeclaration): string => (limits ? ` between ${limits[0]} and ${limits[1]}` : "");
 
 const clipped = (text: string): string => (text === "" ? "nothing" : text.length > 60 ? `${text.slice(0, 60)}…` : text);

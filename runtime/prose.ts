@@ -42,7 +42,7 @@ export function escapeMarkdown(text: string): string {
     .replace(/\s*[\r\n\u2028\u2029]\s*/g, " ")
     .replace(/[\\`*_{}[\]<>()#|~!&$^@]/g, "\\$&")
     .replace(/:(?=\/\/)/g, "\\:")
-    .replace(/\bwww\./gi, (match) => `${match.slice(0, 3)}\\.`)
+    .replace(/www\./gi, (match) => `${match.slice(0, 3)}\\.`)
     .replace(/^(\s*)([-+=])/, "$1\\$2")
     .replace(/^(\s*\d+)(?=[.)](\s|$))/, "$1\\");
 }

@@ -52,10 +52,7 @@ export function parseQuantity(text: string, expected?: Unit): Quantity {
 
 /** Powers of ten move the decimal point of the text, so that "0.3 mm" is the double nearest to 0.0003. */
 function toSi(digits: string, unit: Unit): number {
-  if (unit.exponent !== undefined) {
-    const [mantissa, power = "0"] = digits.toLowerCase().split("e") as [string, string?];
-    return Number(`${mantissa}e${Number(power) + unit.exponent}`) + unit.offset;
-  }
+  if (unit.exponent !== undefined) return Number(pointMoved(digits, unit.exponent)) + unit.offset;
   if (unit.text === "deg") return (Number(digits) * Math.PI) / 180;
   return Number(digits) * unit.scale + unit.offset;
 }
@@ -65,26 +62,35 @@ export function inUnit(value: number, unit: Unit): number {
   if (unit.text === "deg") return (value * 180) / Math.PI;
   const shifted = value - unit.offset;
   if (unit.exponent === undefined) return shifted / unit.scale;
-  return unit.exponent >= 0 ? shifted / 10 ** unit.exponent : shifted * 10 ** -unit.exponent;
+  return Number.isFinite(shifted) ? Number(pointMoved(String(shifted), -unit.exponent)) : shifted;
+}
+
+/** Decimal text times a power of ten, without rounding. */
+function pointMoved(digits: string, power: number): string {
+  const [mantissa, exponent = "0"] = digits.toLowerCase().split("e") as [string, string?];
+  return `${mantissa}e${Number(exponent) + power}`;
 }
 
 /**
- * An SI value as text in a unit, as short as reads back to the same value: 0.0003 in mm is "0.3 mm". Where no decimal in this
- * unit reads back to the last bit (a unit whose factor is not a power of ten), the nearest one does.
+ * An SI value as text in a unit, as short as reads back to the same value: 0.0003 in mm is "0.3 mm". In a unit whose factor is no
+ * power of ten there may be no such text; then the nearest is given, which reads back to within two units in the last place.
  */
 export function formatQuantity(value: number, unitText: string): string {
   const unit = unitNamed(unitText);
   if (!Number.isFinite(value))
     throw new QuantityError(`no quantity in ${unitText || "plain numbers"} stands for ${value}`);
   const number = inUnit(value, unit);
-  let digits = String(number);
-  for (let precision = 1; precision <= 17; precision++) {
-    const candidate = String(Number(number.toPrecision(precision)));
-    if (toSi(candidate, unit) !== value) continue;
-    digits = candidate;
-    break;
-  }
+  const digits = candidates(value, number, unit).find((text) => toSi(text, unit) === value) ?? String(number);
   return unit.text === "" ? digits : `${digits} ${unit.text}`;
+}
+
+/** Texts for a number of units, shortest first; then its neighbours, then the value's own digits with the point moved. */
+function candidates(value: number, number: number, unit: Unit): string[] {
+  const texts = Array.from({ length: 17 }, (_, i) => String(Number(number.toPrecision(i + 1))));
+  const step = Math.abs(number) * Number.EPSILON;
+  for (const steps of [0.5, -0.5, 1, -1, 1.5, -1.5]) texts.push(String(number + steps * step));
+  if (unit.exponent !== undefined && unit.offset === 0) texts.push(pointMoved(String(value), -unit.exponent));
+  return texts;
 }
 
 /** "a length", "an angle", "a plain number". */

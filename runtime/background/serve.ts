@@ -50,18 +50,3 @@ export function serveBackground(
   });
   port.post({ type: "ready" });
 }
-
-/**
- * The module that a worker runs: the same notebook, served. `notebook` and `runtime` are specifiers as the bundler resolves them.
- * The text is TypeScript; bundle it as one ES module.
- */
-export function workerEntry(notebook: string, runtime: string, host: "browser" | "node"): string {
-  const port = host === "browser" ? "browserPort" : "nodePort";
-  return [
-    `import { notebook } from ${JSON.stringify(notebook)};`,
-    `import { serveBackground } from ${JSON.stringify(`${runtime}/background/serve.ts`)};`,
-    `import { ${port} } from ${JSON.stringify(`${runtime}/background/${host}.ts`)};`,
-    `serveBackground(notebook.backgroundFunctions, ${port}());`,
-    "",
-  ].join("\n");
-}

@@ -42,6 +42,14 @@ export function checkModule(file: string, module: ModuleDraft, parsed: ParsedMod
   for (const cell of cells) {
     if (cell.part !== undefined) continue;
     if (cell.draft.form === "bad") report("statement", cell.draft.refusal as string, cell.draft.node, cell);
+    for (const node of cell.draft.free.unerasable) {
+      report(
+        "statement",
+        "an enum or a namespace leaves code behind; write a const object or a union of texts",
+        node,
+        cell,
+      );
+    }
     resolveReferences(cell, cells, byName, module, report);
     vocabularyUse(cell, byName, module, report, backgroundFunctions);
   }

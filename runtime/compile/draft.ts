@@ -46,7 +46,7 @@ export interface ModuleDraft {
   refused: { node: Node; refusal: string }[];
 }
 
-const nothing: FreeNames = { references: [], calls: [], awaits: false };
+const nothing: FreeNames = { references: [], calls: [], awaits: false, unerasable: [] };
 
 /** Sorts a module's statements into drafts of cells, imports, and what is kept or blanked. */
 export function draftModule(source: string, parsed: ParsedModule): ModuleDraft {

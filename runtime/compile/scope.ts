@@ -18,6 +18,8 @@ export interface FreeNames {
   calls: Node[];
   /** awaits outside of any inner function */
   awaits: boolean;
+  /** enums and namespaces inside: TypeScript that leaves code behind */
+  unerasable: Node[];
 }
 
 interface Scope {
@@ -40,7 +42,7 @@ const FUNCTIONS = new Set(["FunctionDeclaration", "FunctionExpression", "ArrowFu
  * @param patterns declared patterns whose defaults and computed keys count (their bound names are the caller's)
  */
 export function freeNames(nodes: readonly Node[], patterns: readonly Node[] = []): FreeNames {
-  const found: FreeNames = { references: [], calls: [], awaits: false };
+  const found: FreeNames = { references: [], calls: [], awaits: false, unerasable: [] };
   const place: Place = { scope: { names: new Set() }, deferred: false, inner: false };
   for (const pattern of patterns) visitBinding(pattern, place, found);
   for (const node of nodes) visit(node, place, found);
@@ -176,6 +178,7 @@ function visit(node: Node, place: Place, found: FreeNames): void {
     visit(child(node, "expression") as Node, place, found);
     return;
   }
+  if (node.type === "TSEnumDeclaration" || node.type === "TSModuleDeclaration") found.unerasable.push(node);
   if (node.type.startsWith("TS")) return;
   for (const value of Object.values(node)) {
     if (Array.isArray(value)) visitAll(value.filter(isNode), place, found);

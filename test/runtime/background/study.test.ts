@@ -2,7 +2,6 @@ import { build } from "esbuild";
 import { afterEach, describe, expect, test } from "vitest";
 import { nodeSpawn } from "../../../runtime/background/node.ts";
 import { createBackgroundPool, type WarmPool } from "../../../runtime/background/pool.ts";
-import { workerEntry } from "../../../runtime/background/serve.ts";
 import { compileNotebook } from "../../../runtime/compile.ts";
 import { createStudy } from "../../../runtime/engine.ts";
 import { evaluateNotebook } from "../../../runtime/headless.ts";
@@ -11,6 +10,10 @@ import { bundled, importText, VOCABULARY } from "../load-notebook.ts";
 
 const HEAVY = 'import { add, deaf, exits, refuses, reporting } from "../test/runtime/background/heavy-functions.ts";';
 const repository = new URL("../../../", import.meta.url).pathname;
+const SERVE = `import { notebook } from "the-notebook";
+import { nodePort } from "./runtime/background/node.ts";
+import { serveBackground } from "./runtime/background/serve.ts";
+serveBackground(notebook.backgroundFunctions, nodePort());`;
 
 /** A notebook, and the script of a worker that serves it, bundled as the command line does. */
 async function withWorker(body: string): Promise<{ notebook: NotebookModule; script: string }> {
@@ -19,7 +22,7 @@ async function withWorker(body: string): Promise<{ notebook: NotebookModule; scr
   const { notebook } = await importText(await bundled(code, "notebooks/test.ts"));
   const result = await build({
     stdin: {
-      contents: workerEntry("the-notebook", `${repository}runtime`, "node"),
+      contents: SERVE,
       loader: "ts",
       resolveDir: repository,
     },

@@ -138,6 +138,11 @@ const table: [situation: string, lines: string[], expected: Expected[]][] = [
   ["if", ["if (true) {}"], [{ kind: "statement", at: [1, 1], cell: "line 1", message: /^if can't stand/ }]],
   ["an enum", ["enum E { A }"], [{ kind: "statement", at: [1, 1], cell: "E", message: /^E is an enum/ }]],
   [
+    "an enum inside a function",
+    ["const x = () => {", "  enum E { A }", "  return E.A;", "};"],
+    [{ kind: "statement", at: [2, 3], cell: "x", message: /^an enum or a namespace leaves code behind/ }],
+  ],
+  [
     "a namespace",
     ["namespace N { export const a = 1; }"],
     [{ kind: "statement", at: [1, 1], cell: "line 1", message: /namespace/ }],
