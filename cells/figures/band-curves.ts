@@ -227,7 +227,11 @@ function draw(pen: Pen, width: number, alt: string, { lines, gaps, edges, panels
   let bottom = top + 16 + Math.ceil(panels.length / grid.count) * pitch - 56;
   if (panels.every(({ curves }) => curves.length === 0)) bottom = top - 26;
   for (const { label, reason } of gaps) {
-    const words = wrapText(`${label}, not realisable: ${reason}`, width, textSize.drawing);
+    const words = wrapText(
+      `${label[0]!.toUpperCase()}${label.slice(1)}, not realisable: ${reason}`,
+      width,
+      textSize.drawing,
+    );
     parts.push(textBlock(pen, 0, bottom + 24, words, { fill: secondary, leading: 18 }));
     bottom += 24 + (words.length - 1) * 18;
   }

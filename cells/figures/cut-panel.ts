@@ -125,9 +125,11 @@ function cutMarks({ style, levels }: CutSeries, fullColor: string) {
     { cut: "e", level: ePlaneDb },
   ] as const;
   return cuts.map(({ cut, level }) => {
-    const points = aboveFloor(thetaDeg, level, floorDb);
-    if (style === "measured")
+    if (style === "measured") {
+      const points = thetaDeg.map((theta, i): Point => [theta, level[i]!]).filter(([, y]) => y >= floorDb);
       return marks(chosenPoints(points, 28), measuredShapes[cut], color, cut === "cross" ? 1.6 : 2.6);
+    }
+    const points = aboveFloor(thetaDeg, level, floorDb);
     const stroke = cutStroke[cut];
     return curve(points, { color, width: style === "full" ? stroke.width : width, dash: stroke.dash });
   });

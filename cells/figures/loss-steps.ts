@@ -99,14 +99,14 @@ function rows(entries: readonly (LossEntry | LossGap)[]): (string | number)[][] 
 
 const rowPitch = 31;
 const barHeight = 7;
-const valueRoom = 2;
+/** Room for the values at the right, px: no bar runs under them. */
+const valueRoom = 42;
 
 function draw(pen: Pen, width: number, alt: string, entries: readonly (LossEntry | LossGap)[], note?: string): Element {
   const grid = columns(entries.length, width, 210, 26);
   const deepest = Math.min(-0.5, ...entries.map((entry) => ("steps" in entry ? powerToDb(totalOf(entry)) : 0)));
   const box = Math.min(grid.width, 420);
-  // The deepest bar ends at most at the values' right edge; a tick less there keeps the axis clean.
-  const perDb = (box - valueRoom) / -deepest / 1.06;
+  const perDb = (box - valueRoom) / -deepest;
   const parts: Element[] = [];
   let top = 16;
   let bottom = top;
@@ -196,7 +196,7 @@ function scaleLines(pen: Pen, at: LossPlace & { axisY: number; foot: number }): 
   return Array.from({ length: count + 1 }, (_, i) => {
     const x = at.left + i * step * at.perDb;
     const words = i === 0 ? "0 dB" : decimal(-i * step, digits);
-    const fits = x + textWidth(words, textSize.axis) / 2 <= at.left + at.width;
+    const fits = x + textWidth(words, textSize.axis) / 2 <= at.left + at.width - 4;
     return pen(
       "g",
       {},

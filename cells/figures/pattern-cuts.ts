@@ -4,7 +4,6 @@ import { requireNumber } from "../check.ts";
 import type { FeedKind } from "../horn/horn-profile.ts";
 import { crossPolarPeakAt, levelAt, levelFloorDb, type PatternLevel } from "../pattern/cuts.ts";
 import type { FeedPattern } from "../pattern/feed-pattern.ts";
-import { toDeg } from "../units.ts";
 import { type CutSeries, cutPanel, measuredWords } from "./cut-panel.ts";
 import type { Drawing } from "./drawing.ts";
 import { columns } from "./kit/columns.ts";
@@ -157,13 +156,11 @@ function draw(pen: Pen, width: number, alt: string, known: Known): Element {
       { words: "E-plane", ...cutStroke.e },
       { words: "H-plane", ...cutStroke.h },
       { words: "cross-polar, 45°", ...cutStroke.cross },
-      ...several
-        .slice(1)
-        .map(({ model = "another model", style }) => ({
-          words: style === "measured" ? `${model}: ${measuredWords}` : model,
-          ...lineStroke[style],
-          dash: undefined,
-        })),
+      ...several.slice(1).map(({ model = "another model", style }) => ({
+        words: style === "measured" ? `${model}: ${measuredWords}` : model,
+        ...lineStroke[style],
+        dash: undefined,
+      })),
     ],
     `dB below the axis${frequency === undefined ? "" : `, ${gigahertz(frequency)} GHz`}`,
   );

@@ -1,11 +1,12 @@
 // A row of line samples with their words: no box, and it wraps.
 
 import { ink, secondary, textSize } from "./palette.ts";
-import { type Pen, text } from "./svg.ts";
+import { coordinate, type Pen, text } from "./svg.ts";
 import { textWidth } from "./text-width.ts";
 
 export interface LegendEntry {
   words: string;
+  /** px; 0 for marks that the words explain */
   width: number;
   dash?: string;
   color?: string;
@@ -29,24 +30,16 @@ export function legendRow(
     left = 0;
     baseline += 20;
   };
-  for (const entry of entries) {
-    const wide = sample + 7 + textWidth(entry.words, size);
+  for (const { words, width: stroke, dash, color = ink } of entries) {
+    // an entry without a line explains marks in its words
+    const indent = stroke > 0 ? sample + 7 : 0;
+    const wide = indent + textWidth(words, size);
     next(wide);
-    const { color = ink, dash } = entry;
-    if (entry.width > 0)
-      elements.push(
-        pen("path", {
-          d: `M${left} ${baseline - 4}h${sample}`,
-          stroke: color,
-          "stroke-width": entry.width,
-          "stroke-dasharray": dash,
-        }),
-      );
-    else
-      elements.push(
-        pen("path", { d: `M${left + 11} ${baseline - 8}l8 8m0 -8l-8 8`, stroke: color, "stroke-width": 1.3 }),
-      );
-    elements.push(text(pen, left + sample + 7, baseline, entry.words, { size }));
+    if (stroke > 0) {
+      const d = `M${coordinate(left)} ${baseline - 4}h${sample}`;
+      elements.push(pen("path", { d, stroke: color, "stroke-width": stroke, "stroke-dasharray": dash }));
+    }
+    elements.push(text(pen, left + indent, baseline, words, { size }));
     left += wide + 20;
   }
   if (aside) {

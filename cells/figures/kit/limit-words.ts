@@ -14,9 +14,15 @@ export function limitWords(
   pen: Pen,
   words: string,
   at: number,
-  inside: { frame: Frame; drawn: Panel; curves: readonly (readonly Point[])[]; uprights?: readonly number[] },
+  inside: {
+    frame: Frame;
+    drawn: Panel;
+    curves: readonly (readonly Point[])[];
+    uprights?: readonly number[];
+    fill?: string;
+  },
 ): SVGElement {
-  const { frame, drawn, curves, uprights = [] } = inside;
+  const { frame, drawn, curves, uprights = [], fill = warning } = inside;
   const size = textSize.small;
   const width = textWidth(words, size);
   const height = size + 3;
@@ -35,5 +41,5 @@ export function limitWords(
     ...inPx,
     ...lines,
   ]);
-  return text(pen, place.left, place.top + size, words, { size, fill: warning, halo: paper });
+  return text(pen, place.left, place.top + size, words, { size, fill, halo: paper });
 }

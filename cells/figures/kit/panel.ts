@@ -116,3 +116,6 @@ export const uprights = (at: readonly number[]): Markish => ruleX(at, { stroke: 
 
 /** What is asked: a line in the colour of a warning. Its words stand in the drawing. */
 export const limitLine = (at: number): Markish => ruleY([at], { stroke: warning, strokeWidth: 1.2 });
+
+/** A value to hold curves against, not a limit. */
+export const referenceLine = (at: number): Markish => ruleY([at], { stroke: secondary, strokeWidth: 1 });
