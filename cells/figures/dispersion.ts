@@ -111,6 +111,7 @@ function draw(pen: Pen, width: number, alt: string, { curves, low, high, largest
   const x: Axis = { ...free, domain: [Math.min(...all), Math.max(...all)] };
   x.ticks = free.ticks.filter((tick) => tick >= x.domain[0] && tick <= x.domain[1]);
   const y = roundAxis([0, largest], { count: 4 });
+  const markedGHz = marks.map(({ frequency }) => toGHz(frequency));
   const drawn = panel(
     pen,
     frame,
