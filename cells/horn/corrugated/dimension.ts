@@ -28,6 +28,7 @@ import {
   corrugatedProfile,
   corrugations,
   fewestCorrugations,
+  mostCorrugations,
   wallAt,
 } from "./geometry.ts";
 import { he11Pattern } from "./model.ts";
@@ -165,7 +166,12 @@ function countFor(
       "corrugated",
       `The flare of ${mm(length)} can't be divided: it needs at least ${fewest} corrugations, and pitches of at least ${mm(shortest, 2)} (a tenth of a wavelength; slots of ${100 * leastSlotFill} % of it and teeth of ${mm(tooth, 2)}) leave room for ${most}.`,
     );
-  return Math.min(most, Math.max(fewest, Math.round(length / wantedPitch)));
+  const count = Math.min(most, Math.max(fewest, Math.round(length / wantedPitch)));
+  if (count <= mostCorrugations) return count;
+  return unrealizable(
+    "corrugated",
+    `The flare would be ${mm(length)} long and take ${count} corrugations; more than ${mostCorrugations} are no practical horn.`,
+  );
 }
 
 function refusedByBand(geometry: CorrugatedGeometry, { bandLow, bandHigh }: FeedRequirement): UnrealizableHorn | null {

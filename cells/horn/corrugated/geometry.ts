@@ -44,6 +44,8 @@ export interface Validity {
 export const converterCount = 6;
 /** Fewest corrugations in all: the converter and four more for the mode to settle. */
 export const fewestCorrugations = converterCount + 4;
+/** Most corrugations: a longer horn is no practical feed, and dimensioning it no longer instant. */
+export const mostCorrugations = 2000;
 /** Depth of the first slot: wavelengths at band centre, and at most so much at the upper band edge, short of the half wave. */
 const firstDepth = 0.42;
 const firstDepthAtHigh = 0.48;
@@ -83,11 +85,10 @@ export function corrugatedProfile(geometry: CorrugatedGeometry): HornProfile {
   const { throatLength, flare, pitch, slotWidth, corrugations: all } = geometry;
   const z = [-throatLength - flare.length, -flare.length];
   const radius = [flare.startRadius, flare.startRadius];
+  // Counted from the mouth, so that the last tooth ends at exactly 0 and each slot begins exactly where a tooth ended.
+  const start = (i: number): number => (i === all.length ? 0 : -(all.length - i) * pitch);
   all.forEach(({ innerRadius, depth }, i) => {
-    // counted from the mouth, so that the last tooth ends at exactly 0
-    const start = -(all.length - i) * pitch;
-    const toothEnd = i === all.length - 1 ? 0 : start + pitch;
-    z.push(start, start + slotWidth, start + slotWidth, toothEnd);
+    z.push(start(i), start(i) + slotWidth, start(i) + slotWidth, start(i + 1));
     radius.push(innerRadius + depth, innerRadius + depth, innerRadius, innerRadius);
   });
   z[1] = z[2]!;
@@ -96,7 +97,7 @@ export function corrugatedProfile(geometry: CorrugatedGeometry): HornProfile {
 
 /** m, over the deepest reach of any slot, wall included. */
 export function corrugatedOuterDiameter({ corrugations: all, wall }: CorrugatedGeometry): number {
-  return 2 * (Math.max(...all.map(({ innerRadius, depth }) => innerRadius + depth)) + wall);
+  return 2 * (all.reduce((widest, { innerRadius, depth }) => Math.max(widest, innerRadius + depth), 0) + wall);
 }
 
 export function corrugatedDimensions(geometry: CorrugatedGeometry): Dimension[] {

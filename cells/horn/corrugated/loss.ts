@@ -4,7 +4,6 @@ import { speedOfLight, vacuumImpedance } from "../../constants.ts";
 import { type HybridMode, hybridMode } from "../../guide/hybrid.ts";
 import { hybridParts } from "../../guide/hybrid-field.ts";
 import { surfaceResistance, TE11, wallLoss } from "../../guide/mode.ts";
-import { slotField } from "../../guide/slot.ts";
 import { besselJ0, besselJ1, besselJ2, besselJPrime1, besselY1, besselYPrime1 } from "../../math/bessel.ts";
 import { integrate } from "../../math/quadrature.ts";
 import { type CorrugatedGeometry, type Corrugation, wallAt } from "./geometry.ts";
@@ -16,7 +15,8 @@ const sampledSlots = 9;
  * Attenuation of a horn from throat to mouth, Np: TE11 in the throat guide, then slot by slot through the converter, and by
  * Simpson's rule over nine slots of the rest.
  *
- * Power-loss method with the fields of the lossless hybrid mode at each slot. The φ-directed current is taken as crowded on
+ * Power-loss method with the fields of the lossless hybrid mode at each slot; those in the slot agree to 1e-4 with what a
+ * receding wall does to the mode's phase constant (test/cells/horn/corrugated/loss). The φ-directed current is taken as crowded on
  * the tops of the teeth, an upper estimate; with real roughness the whole is good to some tens of percent, of 0.01 to
  * 0.05 dB.
  */
@@ -45,18 +45,32 @@ function lossAt(geometry: CorrugatedGeometry, slot: Corrugation, frequency: numb
   const mode = hybridMode("HE11", wallAt(slot, slotWidth / pitch), frequency);
   if (!mode) return wallLoss(TE11, slot.innerRadius, frequency, conductivity);
   const resistance = surfaceResistance(frequency, conductivity) / vacuumImpedance ** 2;
-  return lostPerPitch(mode, slot, { pitch, slotWidth }) * (resistance / (2 * pitch));
+  const { faces, bottom, tooth } = wallCurrents(mode, slot, { pitch, slotWidth });
+  return ((faces + bottom + tooth) * resistance) / (2 * pitch);
+}
+
+/** ½∫|η0 H|² dS over the metal of one pitch for 1 W of the mode, V²: times Rs/η0² it is the power lost there. */
+export interface WallCurrents {
+  /** both faces of the slot */
+  faces: number;
+  bottom: number;
+  /** top of the tooth */
+  tooth: number;
 }
 
 /**
- * ∫|η0 H|² dS over the metal of one pitch, times ½·2… as P_lost = (Rs/η0²)·this, for 1 W of the mode, V²:
+ * Currents on one corrugation's metal, from the lossless mode (peak phasors):
  *
  *   at the wall   E_z = A J1(Ka) cos φ,  η0 H_z = Λ A J1(Ka) sin φ,  η0 H_φ = ½(m0 J0 + m2 J2) cos φ,   A = (K/k) e0/(b + Λ)
- *   in the slot   E_z = c S(ρ) cos φ,    η0 H_φ ∝ c S′ cos φ,        η0 H_ρ ∝ c S/(kρ) sin φ,           S(b) = 0
+ *   in the slot   E_z = c S(ρ) cos φ,    η0 H_φ = −j c S′ cos φ,     η0 H_ρ ∝ c S/(kρ) sin φ,           S(b) = 0
  *
- * c from E_z (the mean over a pitch, so pitch/slot higher in the slot) and H_φ together, finite through every resonance.
+ * c from E_z (a mean over a pitch, so pitch/slot times higher in the slot) and H_φ together, finite through every resonance.
  */
-function lostPerPitch(mode: HybridMode, slot: Corrugation, wall: { pitch: number; slotWidth: number }): number {
+export function wallCurrents(
+  mode: HybridMode,
+  slot: Corrugation,
+  wall: { pitch: number; slotWidth: number },
+): WallCurrents {
   const k = (2 * Math.PI * mode.frequency) / speedOfLight;
   const { innerRadius: a, depth } = slot;
   const { pitch, slotWidth } = wall;
@@ -67,16 +81,11 @@ function lostPerPitch(mode: HybridMode, slot: Corrugation, wall: { pitch: number
   const hz = mode.hybridFactor * ez;
   const hPhi = (parts.magnetic0 * besselJ0(x) + parts.magnetic2 * besselJ2(x)) / 2;
 
-  // Slot field scaled to 1 at its mouth in the sense electric² + magnetic² = 1, as slotField does.
   const b = a + depth;
   const [jb, yb] = [besselJ1(k * b), besselY1(k * b)];
-  const { electric, magnetic } = slotField(slot, mode.frequency);
-  const bare = {
-    electric: besselJ1(k * a) * yb - jb * besselY1(k * a),
-    magnetic: besselJPrime1(k * a) * yb - jb * besselYPrime1(k * a),
-  };
-  const size = Math.hypot(bare.electric, bare.magnetic);
-  const drive = Math.hypot((ez * pitch) / slotWidth, hPhi) / Math.hypot(electric, magnetic) / size;
+  const electric = besselJ1(k * a) * yb - jb * besselY1(k * a);
+  const magnetic = besselJPrime1(k * a) * yb - jb * besselYPrime1(k * a);
+  const drive = Math.hypot((ez * pitch) / slotWidth, hPhi) / Math.hypot(electric, magnetic);
   const faces = integrate(
     (rho) => {
       const along = besselJPrime1(k * rho) * yb - jb * besselYPrime1(k * rho);
@@ -87,10 +96,14 @@ function lostPerPitch(mode: HybridMode, slot: Corrugation, wall: { pitch: number
     b,
     8,
   );
-  const bottomField = 2 / (Math.PI * k * b);
-  // ½ from the peak phasors, π from cos² φ and sin² φ; two faces.
-  const inSlot = drive * drive * (2 * faces + slotWidth * b * bottomField * bottomField);
+  // S′(b) by the Wronskian of J1 and Y1
+  const atBottom = 2 / (Math.PI * k * b);
   const tooth = pitch - slotWidth;
-  const onTooth = a * (hPhi * hPhi * tooth + (hz * hz * pitch * pitch) / tooth);
-  return (Math.PI / 2) * (inSlot + onTooth);
+  // ½ from the peak phasors, π from cos² φ and sin² φ
+  const half = Math.PI / 2;
+  return {
+    faces: half * drive * drive * 2 * faces,
+    bottom: half * drive * drive * slotWidth * b * atBottom * atBottom,
+    tooth: half * a * (hPhi * hPhi * tooth + (hz * hz * pitch * pitch) / tooth),
+  };
 }
