@@ -1,19 +1,20 @@
 // A compiled notebook, running. @observablehq/runtime decides what is evaluated and in which order; this file decides what may
 // be called current. A cell is current only while its outcome was computed from the latest outcomes of all its inputs: an
-// evaluation that was overtaken is dropped, whatever it returns, and the newest begins at once.
+// evaluation that was overtaken is dropped, whatever it returns, and the newest begins at once. The ways in which a cell changes
+// its state are kept together here, so that they can be read against one another.
 import { type Module, Runtime } from "@observablehq/runtime";
 import { startHere } from "./background/here.ts";
 import type { BackgroundPool } from "./background/pool.ts";
 import { failureOf, passedOn } from "./cell-error.ts";
-import { CellRecord, type Outcome, OVERTAKEN, type Passed, type Run } from "./engine/cell-record.ts";
+import { backgroundCalls, type Heavy, nameOfHeavy, type Progress } from "./engine/background-calls.ts";
+import { CellRecord, isLatest, type Outcome, OVERTAKEN, type Passed, type Run } from "./engine/cell-record.ts";
 import { GivenDesk } from "./engine/given-desk.ts";
 import { Listeners } from "./engine/listeners.ts";
-import { matchCells, sameCell } from "./engine/match-cells.ts";
+import { matchCells, sameCell, withoutCycles } from "./engine/match-cells.ts";
 import { nextTurn } from "./engine/next-turn.ts";
 import { deepFreeze } from "./freeze.ts";
 import { Refusal } from "./given.ts";
-import { cyclesOf } from "./graph.ts";
-import type { CellView, CompiledCell, GivenView, NotebookModule, Study } from "./study.ts";
+import type { CellView, GivenView, NotebookModule, Study } from "./study.ts";
 
 export interface StudyOptions {
   /** texts of givens to begin with (an address, a command line); refused ones are kept as the given's refusal, unknown names ignored */
@@ -142,17 +143,18 @@ class RunningStudy implements Study {
   }
 
   redefine(module: NotebookModule, background?: BackgroundPool): void {
-    if (background && background !== this.pool) {
+    const replaced = background !== undefined && background !== this.pool;
+    if (replaced) {
       this.pool?.dispose();
       this.pool = background;
     }
-    this.adopt(module);
+    this.adopt(module, replaced);
   }
 
   dispose(): void {
     if (this.disposed) return;
     this.disposed = true;
-    for (const record of this.records.values()) record.run?.drop();
+    for (const record of this.records.values()) this.dropRun(record);
     this.runtime.dispose();
     this.pool?.dispose();
     this.listeners.clear();
@@ -166,7 +168,7 @@ class RunningStudy implements Study {
   }
 
   /** Takes a version of the notebook: new cells, changed cells, cells that are gone. The first version changes all. */
-  private adopt(module: NotebookModule): void {
+  private adopt(module: NotebookModule, poolReplaced = false): void {
     const former = this.notebook;
     const importsMoved = former.importsDigest !== module.importsDigest;
     const cells = withoutCycles(module.cells);
@@ -181,8 +183,8 @@ class RunningStudy implements Study {
       const wasGiven = known?.info.role === "given";
       if (wasGiven && info.role !== "given") this.desk.forget(known.info.name);
       if (!known || !sameCell(known.info, info, importsMoved)) changed.push(record);
-      // A call still running in workers of the former version would answer for that one.
-      else if (record.run && record.info.background && module !== former) changed.push(record);
+      // Work that waits for the former workers would wait in vain.
+      else if (record.run && poolReplaced) changed.push(record);
       gone.delete(record);
       record.info = info;
       this.records.set(info.name, record);
@@ -199,7 +201,7 @@ class RunningStudy implements Study {
   }
 
   private remove(record: CellRecord): void {
-    record.run?.drop();
+    this.dropRun(record);
     record.variable?.delete();
     if (record.info.role === "given" && this.records.get(record.info.name)?.info.role !== "given") {
       this.desk.forget(record.info.name);
@@ -276,6 +278,8 @@ class RunningStudy implements Study {
     const { run } = record;
     record.run = undefined;
     record.progress = undefined;
+    for (const job of record.jobs) job.cancel();
+    record.jobs.clear();
     run?.drop();
   }
 
@@ -287,7 +291,8 @@ class RunningStudy implements Study {
     const { info } = record;
     if (info.problem !== undefined) return this.accept(record, passed, this.failed(record, new Error(info.problem)));
     record.evaluations++;
-    const run: Run = { jobs: new Set(), drop: () => {} };
+    const run: Run = { drop: () => {} };
+    record.jobs = new Set();
     let result: unknown;
     try {
       const values = passed.map((input) => input.value);
@@ -309,11 +314,7 @@ class RunningStudy implements Study {
     record.run = run;
     this.noteChange(record);
     return new Promise<Passed>((resolve) => {
-      run.drop = () => {
-        for (const job of run.jobs) job.cancel();
-        run.jobs.clear();
-        resolve(OVERTAKEN);
-      };
+      run.drop = () => resolve(OVERTAKEN);
       const end = (outcome: Outcome) => {
         if (record.run !== run) return;
         record.run = undefined;
@@ -340,41 +341,23 @@ class RunningStudy implements Study {
     return outcome;
   }
 
-  /** What a cell receives as `background`: its calls live as long as the evaluation that made them is wanted. */
+  /** What a cell receives as `background`. */
   private backgroundFor(record: CellRecord, run: Run) {
-    return async (heavy: (...args: never[]) => unknown, ...args: unknown[]): Promise<unknown> => {
-      const job = this.startJob(heavy, args, (fraction) => {
+    return backgroundCalls(
+      record.jobs,
+      (heavy, args, onProgress) => this.startJob(heavy, args, onProgress),
+      (fraction) => {
         if (record.run !== run) return;
         record.progress = fraction;
         this.noteChange(record);
-      });
-      run.jobs.add(job);
-      try {
-        return await job.result;
-      } finally {
-        run.jobs.delete(job);
-      }
-    };
+      },
+    );
   }
 
-  private startJob(
-    heavy: (...args: never[]) => unknown,
-    args: readonly unknown[],
-    onProgress: (fraction: number) => void,
-  ) {
-    if (typeof heavy !== "function") throw new TypeError(`background: needs a function first; got ${typeof heavy}`);
+  private startJob(heavy: Heavy, args: readonly unknown[], onProgress: Progress) {
     if (!this.pool) return startHere(heavy, args, onProgress);
-    const functions = this.notebook.backgroundFunctions;
-    const imported = Object.keys(functions).find((name) => functions[name] === heavy);
-    // A function of the notebook itself is known by its cell: the worker makes its own.
-    const own = () => Object.keys(functions).find((name) => this.records.get(name)?.outcome?.value === heavy);
-    const name = imported ?? own();
-    if (name === undefined) {
-      throw new TypeError(
-        `background: ${heavy.name || "the function"} must be called by the name it is imported or defined under`,
-      );
-    }
-    return this.pool.start(name, args, onProgress);
+    const cellValue = (name: string) => this.records.get(name)?.outcome?.value;
+    return this.pool.start(nameOfHeavy(heavy, this.notebook.backgroundFunctions, cellValue), args, onProgress);
   }
 
   private noteChange(record: CellRecord): void {
@@ -398,23 +381,6 @@ class RunningStudy implements Study {
   }
 }
 
-/** Each is still the latest outcome of its cell, which has not fallen behind since. */
-function isLatest(passed: readonly Passed[]): passed is readonly Outcome[] {
-  return passed.every((outcome) => outcome !== OVERTAKEN && outcome.record.fresh && outcome.record.outcome === outcome);
-}
-
 function isThenable(value: unknown): value is PromiseLike<unknown> {
   return typeof value === "object" && value !== null && typeof (value as { then?: unknown }).then === "function";
-}
-
-/** The compiler marks cells on a cycle; a module from elsewhere must not bring one in either. */
-function withoutCycles(cells: readonly CompiledCell[]): CompiledCell[] {
-  const graph = new Map(cells.map((cell) => [cell.name, cell.problem === undefined ? cell.inputs : []]));
-  const problems = new Map<string, string>();
-  for (const cycle of cyclesOf(graph)) {
-    for (const name of cycle) problems.set(name, `${cycle[0]} needs its own value: ${cycle.join(" → ")}`);
-  }
-  return cells.map((cell) =>
-    problems.has(cell.name) ? { ...cell, problem: problems.get(cell.name) as string } : cell,
-  );
 }

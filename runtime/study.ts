@@ -124,8 +124,10 @@ export interface Study {
   settled(): Promise<void>;
   /** Called once per change of state or value, after each burst, with the cells that changed. Returns a way to leave. */
   subscribe(listener: (changed: readonly CellView[]) => void): () => void;
-  /** Takes a newly compiled version of the notebook: only cells whose text or inputs differ (and what depends on them) are evaluated.
-   * A pool of workers that know the new version takes the former one's place, and work under way begins again in it. */
+  /**
+   * Takes a newly compiled version of the notebook: only cells whose text or inputs differ (and what depends on them) are evaluated.
+   * A pool of workers that know the new version takes the former one's place, and work under way begins again in it.
+   */
   redefine(module: NotebookModule, background?: BackgroundPool): void;
   dispose(): void;
 }

@@ -1,5 +1,6 @@
 // A module's statements as drafts of cells: what each one binds, what it reads, where it stands. Rules are checked afterwards.
-import { boundNames, type FreeNames, freeNames } from "./scope.ts";
+import { boundNames } from "./declared-names.ts";
+import { type FreeNames, freeNames } from "./scope.ts";
 import { type Comment, child, children, field, identifierName, type Node, type ParsedModule } from "./syntax.ts";
 
 export interface Import {

@@ -1,4 +1,5 @@
 // Scope analysis: which names does a piece of code read or write that it doesn't declare itself? A reference inside a type is none.
+import { blockNames, boundNames, FUNCTIONS, hoistedNames } from "./declared-names.ts";
 import { child, children, field, identifierName, isNode, isWrapper, type Node, unwrapped } from "./syntax.ts";
 
 export interface Reference {
@@ -34,8 +35,6 @@ interface Place {
   inner: boolean;
 }
 
-const FUNCTIONS = new Set(["FunctionDeclaration", "FunctionExpression", "ArrowFunctionExpression"]);
-
 /**
  * Names that `nodes` take from outside.
  * @param nodes    expressions, statements or patterns, in order
@@ -47,28 +46,6 @@ export function freeNames(nodes: readonly Node[], patterns: readonly Node[] = []
   for (const pattern of patterns) visitBinding(pattern, place, found);
   for (const node of nodes) visit(node, place, found);
   return found;
-}
-
-/** Names that a declared pattern binds: `{ a, b: [c = 1, ...d] }` binds a, c, d. */
-export function boundNames(pattern: Node): Node[] {
-  switch (pattern.type) {
-    case "Identifier":
-      return [pattern];
-    case "ObjectPattern":
-      return children(pattern, "properties").flatMap((property) =>
-        boundNames((property.type === "RestElement" ? child(property, "argument") : child(property, "value")) as Node),
-      );
-    case "ArrayPattern":
-      return children(pattern, "elements").flatMap(boundNames);
-    case "AssignmentPattern":
-      return boundNames(child(pattern, "left") as Node);
-    case "RestElement":
-      return boundNames(child(pattern, "argument") as Node);
-    case "TSParameterProperty":
-      return boundNames(child(pattern, "parameter") as Node);
-    default:
-      return [];
-  }
 }
 
 function isFree(name: string, scope: Scope): boolean {
@@ -320,35 +297,4 @@ function walkPattern(pattern: Node, place: Place, found: FreeNames, leaf: (node:
 function within(place: Place, names: readonly Node[]): Place {
   if (names.length === 0) return place;
   return { ...place, scope: { names: new Set(names.map(identifierName)), parent: place.scope } };
-}
-
-/** Names that a statement declares in its own block: let, const, class, function. */
-function blockNames(statement: Node): Node[] {
-  switch (statement.type) {
-    case "VariableDeclaration":
-      if (field(statement, "kind") === "var") return [];
-      return children(statement, "declarations").flatMap((one) => boundNames(child(one, "id") as Node));
-    case "FunctionDeclaration":
-    case "TSDeclareFunction":
-    case "ClassDeclaration":
-    case "TSEnumDeclaration":
-      return [child(statement, "id") as Node];
-    case "LabeledStatement":
-      return blockNames(child(statement, "body") as Node);
-    default:
-      return [];
-  }
-}
-
-/** Names that `var` lifts to the function from anywhere inside a statement, inner functions excepted. */
-function hoistedNames(node: Node): Node[] {
-  if (FUNCTIONS.has(node.type) || node.type.startsWith("Class") || node.type.startsWith("TS")) return [];
-  if (node.type === "VariableDeclaration") {
-    if (field(node, "kind") !== "var") return [];
-    return children(node, "declarations").flatMap((one) => boundNames(child(one, "id") as Node));
-  }
-  if (!/Statement$|^SwitchCase$|^CatchClause$/.test(node.type) || node.type === "ExpressionStatement") return [];
-  return Object.values(node).flatMap((value) =>
-    Array.isArray(value) ? value.filter(isNode).flatMap(hoistedNames) : isNode(value) ? hoistedNames(value) : [],
-  );
 }

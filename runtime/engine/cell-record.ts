@@ -16,8 +16,7 @@ export type Passed = Outcome | typeof OVERTAKEN;
 
 /** An evaluation under way. */
 export interface Run {
-  jobs: Set<BackgroundJob>;
-  /** Drops it: its jobs are cancelled, and whoever waits goes on at once with OVERTAKEN. */
+  /** Drops it: whoever waits goes on at once, with OVERTAKEN. */
   drop: () => void;
 }
 
@@ -33,6 +32,8 @@ export class CellRecord {
   /** stopped by hand: waits for an input to move or for `again` */
   stopped = false;
   run: Run | undefined;
+  /** background calls of the latest evaluation; a cell that is a function may go on making them when it is current */
+  jobs = new Set<BackgroundJob>();
   progress: number | undefined;
   evaluations = 0;
   readonly view: CellView;
@@ -96,4 +97,9 @@ function viewOf(record: CellRecord): CellView {
       return record.evaluations;
     },
   } as CellView;
+}
+
+/** Each is still the latest outcome of its cell, which has not fallen behind since. */
+export function isLatest(passed: readonly Passed[]): passed is readonly Outcome[] {
+  return passed.every((outcome) => outcome !== OVERTAKEN && outcome.record.fresh && outcome.record.outcome === outcome);
 }

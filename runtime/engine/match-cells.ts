@@ -1,4 +1,5 @@
 // Which cell of a new version is which of the former one.
+import { cyclesOf } from "../graph.ts";
 import type { CompiledCell } from "../study.ts";
 import type { CellRecord } from "./cell-record.ts";
 
@@ -35,5 +36,17 @@ export function sameCell(former: CompiledCell, cell: CompiledCell, importsMoved:
     former.inputs.length === cell.inputs.length &&
     former.inputs.every((input, i) => input === cell.inputs[i]) &&
     !(importsMoved && (cell.imports?.length ?? 0) > 0)
+  );
+}
+
+/** The compiler marks cells on a cycle; a module from elsewhere must not bring one in either. */
+export function withoutCycles(cells: readonly CompiledCell[]): CompiledCell[] {
+  const graph = new Map(cells.map((cell) => [cell.name, cell.problem === undefined ? cell.inputs : []]));
+  const problems = new Map<string, string>();
+  for (const cycle of cyclesOf(graph)) {
+    for (const name of cycle) problems.set(name, `${cycle[0]} needs its own value: ${cycle.join(" → ")}`);
+  }
+  return cells.map((cell) =>
+    problems.has(cell.name) ? { ...cell, problem: problems.get(cell.name) as string } : cell,
   );
 }

@@ -141,6 +141,21 @@ describe("background() in a study", () => {
     expect(running.cell("slow").value).toBe("done");
   });
 
+  test("a cell that is a function may call the background; its calls end when it does", async () => {
+    const { running } = await study(
+      `${N} const sumTo = (x: number) => background(add, x, n); const three = await sumTo(2);
+       const sums = await Promise.all([1, 2, 3].map((x) => background(add, x, n)));`,
+    );
+    await running.settled();
+    expect([running.cell("three").value, running.cell("sums").value]).toEqual([3, [2, 3, 4]]);
+    const sumTo = running.cell("sumTo").value as (x: number) => Promise<number>;
+    const under = Promise.allSettled([sumTo(1), sumTo(2), sumTo(3)]);
+    running.set("n", "7");
+    expect((await under).map(({ status }) => status)).toEqual(["rejected", "rejected", "rejected"]);
+    await running.settled();
+    expect([running.cell("three").value, running.cell("sums").value]).toEqual([9, [8, 9, 10]]);
+  });
+
   test("without workers the same notebook gives the same values on this thread", async () => {
     const { notebook } = await withWorker(
       "const sum = await background(add, 1, 2); const text = await background(reporting, 2, 1); const bad = await background(refuses, 3);",

@@ -1,3 +1,4 @@
+// biome-ignore-all lint/suspicious/noTemplateCurlyInString: notebooks stand here as texts
 import { describe, expect, test } from "vitest";
 import { compileNotebook } from "../../../runtime/compile.ts";
 
