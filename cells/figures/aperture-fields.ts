@@ -113,7 +113,7 @@ function draw(pen: Pen, width: number, alt: string, plates: readonly (FieldPlate
     let bottom = top;
     plates.slice(start, start + perRow).forEach((plate, i) => {
       const cx = lead + radius + 1 + i * pitch;
-      const place = { cx, cy: top + radius, radius };
+      const place = { cx, cy: top + radius, radius, room: 2 * Math.min(radius + 10, width - cx, cx) };
       const follows = plate.follows ?? "beside";
       const between = i === 0 ? lead / 2 : cx - pitch / 2;
       if (signs[follows])
@@ -134,13 +134,13 @@ function draw(pen: Pen, width: number, alt: string, plates: readonly (FieldPlate
 function onePlate(
   pen: Pen,
   plate: FieldPlateEntry | FieldPlateGap,
-  { cx, cy, radius }: { cx: number; cy: number; radius: number },
+  { cx, cy, radius, room }: { cx: number; cy: number; radius: number; room: number },
 ): { elements: Element[]; bottom: number } {
   const gap = !("field" in plate);
   const fill = plate.kind ? kindStyle(plate.kind).words : ink;
   const titleY = cy + radius + 25;
   const words = gap ? `not realisable: ${plate.reason}` : underWords(plate);
-  const lines = words ? wrapText(words, 2 * radius + 20, textSize.axis) : [];
+  const lines = words ? wrapText(words, room, textSize.axis) : [];
   const elements = [
     gap
       ? pen("circle", { cx, cy, r: radius, stroke: secondary, "stroke-width": 0.8, "stroke-dasharray": "3 3" })

@@ -85,7 +85,7 @@ function drawSection(
 ): { elements: Element[]; height: number } {
   const { diameter, focalLength, depth, halfAngle } = dish;
   const { feed, phaseCenter = 0 } = options;
-  // The mouth stands at focus + phaseCenter·(toward the dish is −); what sticks out behind needs room.
+  // What sticks out behind the focus needs room; the mouth of a horn with its phase centre inside stands before it.
   const behind = feed ? feed.length + phaseCenter : 0;
   const [leftRoom, rightRoom] = [46, 58];
   const reach = Math.max(focalLength + Math.max(0, behind), depth);
@@ -116,7 +116,7 @@ function drawSection(
     pen("path", { d: pathThrough(curve), stroke: ink, "stroke-width": 3, "stroke-linecap": "round" }),
     ...angleArc(pen, focus, halfAngle, focalLength * scale, half),
     ...dimensions(pen, { dish, scale, vertexX, rimX, focusX, axisY, half, bottomY, top }),
-    ...(feed ? feedAtFocus(pen, feed, { x: focusX - phaseCenter * scale, axisY, scale, width }) : []),
+    ...(feed ? feedAtFocus(pen, feed, { x: focusX + phaseCenter * scale, axisY, scale, width }) : []),
     pen("circle", { cx: focusX, cy: axisY, r: 2.4, fill: ink, stroke: paper, "stroke-width": 0.8 }),
   ];
   return { elements, height: bottomY + 10 };

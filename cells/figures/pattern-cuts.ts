@@ -147,7 +147,12 @@ function rows(places: Place[]): (string | number)[][] {
 
 function draw(pen: Pen, width: number, alt: string, known: Known): Element {
   const { places, frequency } = known;
-  const several = places.find(({ series }) => series.length > 1)?.series ?? [];
+  // Each further model once, by how it is drawn.
+  const further = new Map(
+    places
+      .flatMap(({ series }) => series.slice(1))
+      .map(({ model = "another model", style }) => [`${style} ${model}`, { model, style }]),
+  );
   const legend = legendRow(
     pen,
     14,
@@ -156,7 +161,7 @@ function draw(pen: Pen, width: number, alt: string, known: Known): Element {
       { words: "E-plane", ...cutStroke.e },
       { words: "H-plane", ...cutStroke.h },
       { words: "cross-polar, 45°", ...cutStroke.cross },
-      ...several.slice(1).map(({ model = "another model", style }) => ({
+      ...[...further.values()].map(({ model, style }) => ({
         words: style === "measured" ? `${model}: ${measuredWords}` : model,
         ...lineStroke[style],
         dash: undefined,

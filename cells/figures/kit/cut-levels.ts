@@ -30,7 +30,8 @@ export function cutLevels(pattern: FeedPattern, thetaMax: number): CutLevels {
   const decibels = (power: number): number => Math.max(levelFloorDb, 10 * Math.log10(power / reference));
   const power = ({ re, im }: ComplexVector, i: number): number => re[i]! ** 2 + im[i]! ** 2;
   for (let i = 0; i < theta.length && theta[i]! <= thetaMax + 1e-9; i += every) {
-    levels.thetaDeg.push(toDeg(theta[i]!));
+    // 60, not 59.99999999999999, in a column of angles
+    levels.thetaDeg.push(Math.round(toDeg(theta[i]!) * 1e9) / 1e9);
     levels.ePlaneDb.push(decibels(power(ePlane, i)));
     levels.hPlaneDb.push(decibels(power(hPlane, i)));
     const cross = (ePlane.re[i]! - hPlane.re[i]!) ** 2 + (ePlane.im[i]! - hPlane.im[i]!) ** 2;
