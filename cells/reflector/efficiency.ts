@@ -4,10 +4,11 @@ import { requireNumber, requirePositive, type Warning } from "../check.ts";
 import { speedOfLight } from "../constants.ts";
 import type { FeedPattern } from "../pattern/feed-pattern.ts";
 import { type PatternInterpolant, patternInterpolant } from "../pattern/interpolant.ts";
-import { movedPhaseOrigin, phaseCenter } from "../pattern/phase-center.ts";
+import { movedPhaseOrigin } from "../pattern/phase-center.ts";
 import { radiatedPower } from "../pattern/power.ts";
 import { powerToDb, toMm } from "../units.ts";
 import { angleToRadius, type Dish, uniformGainDbi } from "./dish.ts";
+import { phaseCenterOverDish } from "./feed-position.ts";
 import { type Illumination, illuminationOf } from "./illumination.ts";
 import { ruzeEfficiency, surfaceLossDb } from "./losses.ts";
 
@@ -97,7 +98,7 @@ export function dishEfficiency(pattern: FeedPattern, dish: Dish, options: DishEf
   const ohmicLossDb = requireNumber(`${where} ohmic loss`, options.ohmicLossDb ?? 0, { min: 0, unit: "dB" });
   const feedPositionZ =
     options.phaseCenter === undefined
-      ? phaseCenter(pattern, dish.halfAngle).z
+      ? phaseCenterOverDish(pattern, dish).z
       : requireNumber(`${where} phase centre`, options.phaseCenter, { unit: "m" });
 
   const atFocus = patternInterpolant(movedPhaseOrigin(pattern, feedPositionZ));

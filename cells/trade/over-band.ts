@@ -5,10 +5,10 @@ import type { Candidate, FeedKind, RealizableHorn } from "../horn/index.ts";
 import { closedFormPattern, ohmicLossDb } from "../horn/index.ts";
 import { beamwidth, crossPolarPeak, halfPowerDb, levelAt } from "../pattern/cuts.ts";
 import type { FeedPattern } from "../pattern/feed-pattern.ts";
-import { phaseCenter } from "../pattern/phase-center.ts";
 import { directivity } from "../pattern/power.ts";
 import { type Dish, spaceLossDb } from "../reflector/dish.ts";
 import { type DishPerformance, dishEfficiency } from "../reflector/efficiency.ts";
+import { phaseCenterOverDish } from "../reflector/feed-position.ts";
 import { powerToDb, toDeg, toGHz, toMm } from "../units.ts";
 
 /** Fewest frequencies over a band. */
@@ -107,7 +107,7 @@ export function overBand(candidate: Candidate, dish: Dish, options: OverBandOpti
   const bandCenter = (bandLow + bandHigh) / 2;
   const patternAt = options.patternAt ?? ((frequency: number) => closedFormPattern(candidate, frequency));
   const centerPattern = patternAt(bandCenter);
-  const feedPositionZ = phaseCenter(centerPattern, dish.halfAngle).z;
+  const feedPositionZ = phaseCenterOverDish(centerPattern, dish).z;
   const pointAt = (frequency: number, pattern: FeedPattern): BandPoint =>
     bandPoint({ horn: candidate, dish, pattern, feedPositionZ, options, frequency });
   const center = pointAt(bandCenter, centerPattern);
@@ -146,7 +146,7 @@ function bandPoint({ horn, dish, pattern, feedPositionZ, options, frequency }: P
     surfaceError: options.surfaceError,
     ohmicLossDb: loss,
   });
-  const center = phaseCenter(pattern, dish.halfAngle);
+  const center = phaseCenterOverDish(pattern, dish);
   return {
     ...performance,
     crossPolarPeakDb: crossPolarPeak(pattern),

@@ -35,6 +35,9 @@ const cutOffMargin = 0.97;
 const te11Margin = 1.15;
 /** Diameter behind the step where the window allows it, wavelengths at band centre: in the middle of 1.22…1.70. */
 const preferredStepDiameter = 1.37;
+/** Narrow over wide radius at the step, a little inside what `stepCoupling` accepts. */
+const leastStep = 0.61;
+const largestStep = 0.975;
 /** Decay of the step's TM11 toward the throat that the input guide gives, Np: 20 dB. */
 const inputDecay = Math.LN10;
 
@@ -158,8 +161,8 @@ function inputForRatio(
   modeRatio: number,
   { bandLow, bandCenter, bandHigh }: FeedRequirement,
 ): number | UnrealizableHorn {
-  const narrowest = Math.max(te11Margin * cutoffRadius(TE11, bandLow), 0.6 * stepRadius);
-  const widest = Math.min(cutOffMargin * cutoffRadius(TM11, bandHigh), 0.98 * stepRadius);
+  const narrowest = Math.max(te11Margin * cutoffRadius(TE11, bandLow), leastStep * stepRadius);
+  const widest = Math.min(cutOffMargin * cutoffRadius(TM11, bandHigh), largestStep * stepRadius);
   const ratioOf = (radius: number): number => stepLaunch(stepCoupling(radius, stepRadius), bandCenter).ratio;
   const most = narrowest < widest ? ratioOf(narrowest) : 0;
   const least = narrowest < widest ? ratioOf(widest) : 0;

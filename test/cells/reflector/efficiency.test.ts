@@ -107,6 +107,14 @@ describe("dishEfficiency: the other factors", () => {
     });
   });
 
+  test("a null inside the dish doesn't upset the feed's position", () => {
+    // field J1-like: falls through zero at 40° and turns sign, seen from a point 7 mm behind the origin
+    const feed = feedLighting(0.5, (rho) => 1 - (rho / 0.75) ** 2);
+    const moved = { ...movedPhaseOrigin(feed, 7e-3), phaseOriginZ: 0 };
+    const found = dishEfficiency(moved, dish({ diameter: 3, fOverD: 0.5 }));
+    assertClose(found.feedPositionZ, -7e-3, { abs: 1e-6, because: "one phase in the main lobe" });
+  });
+
   test.each([0.05, 0.1, 0.15, 0.2])("blockage: evenly lit, d/D %f", (ratio) => {
     const reflector = dish({ diameter: 3, fOverD: 0.5 });
     const feed = feedLighting(0.5, () => 1);

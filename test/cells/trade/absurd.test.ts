@@ -82,6 +82,8 @@ function run(given: Given) {
     maxLength: given.limits.maxLength,
   });
   expect(firstNotFinite(trade)).toBeNull();
+  for (const { edgeTaperDb } of trade.rows)
+    if (edgeTaperDb !== null) expect(Math.abs(edgeTaperDb - given.edgeTaperDb)).toBeLessThan(0.05);
   return trade;
 }
 
@@ -115,6 +117,11 @@ describe("absurd but legal givens end in a number or a reason", () => {
     ["hardly any phase error", { limits: { phaseError: 1e-3 } }],
     ["as much phase error as allowed", { limits: { phaseError: 0.3 } }],
     ["teeth of a metre", { limits: { toothThickness: 1 } }],
+    [
+      "an E-plane null inside the dish",
+      { fOverD: 0.74, edgeTaperDb: 22.2, limits: { phaseError: 0.005, toothThickness: 1e-4 } },
+    ],
+    ["the narrowest guide before a step", { fOverD: 1, bandLow: 15.567918e9, bandHigh: 15.567918e9, edgeTaperDb: 8 }],
     ["kilohertz", { bandLow: 1e3, bandHigh: 1.1e3 }],
     ["terahertz", { bandLow: 1e12, bandHigh: 1.01e12, limits: { toothThickness: 1e-6 } }],
   ])("%s", (_name, change) => {
