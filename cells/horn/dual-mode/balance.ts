@@ -7,19 +7,22 @@ import type { Flare } from "../flare.ts";
 import { coarseThetaCountFor } from "../kind.ts";
 import { te11Pattern } from "../smooth/model.ts";
 
-/** A mouth with TE11 and TM11 in phase, both planes alike at the rim. */
+/** A mouth with TE11 and TM11 in phase, both planes as much alike at the rim as TM11 can make them. */
 export interface BalancedMouth {
   /** |TM11|/|TE11|, power waves; 0 or below where TE11's E-plane is not narrower than its H-plane at the rim */
   ratio: number;
-  /** dB, positive: fall from boresight to the rim, in both planes */
+  /** dB, positive: fall of the φ-mean from boresight to the rim */
   taperDb: number;
+  /** dB, E-plane over H-plane at the rim: 0 unless no ratio makes them equal */
+  planeDifferenceDb: number;
 }
 
 /**
  * Solves |E_TE + r·E_TM|² = |H_TE + r·H_TM|² at the rim angle for the positive r, on the closed-form patterns.
  *
  * With a flat mouth TM11 radiates nothing in the H-plane and on boresight; the spherical phase of a flare makes it a few
- * hundredths of a decibel, so both planes and boresight carry it here.
+ * hundredths of a decibel, so both planes and boresight carry it here. With much phase error the two modes' E-planes part in
+ * phase toward the rim, and no r may make the planes equal: then the r of least difference, and the difference left.
  */
 export function balancedMouth(flare: Flare, frequency: number, halfAngle: number): BalancedMouth {
   const thetaCount = coarseThetaCountFor(flare.radius, frequency);
@@ -38,7 +41,12 @@ export function balancedMouth(flare: Flare, frequency: number, halfAngle: number
   const ratio = (-b + Math.sqrt(Math.max(0, b * b - a * c))) / a;
   const at = (te11: Complex, tm11: Complex): number =>
     (te11.re + ratio * tm11.re) ** 2 + (te11.im + ratio * tm11.im) ** 2;
-  return { ratio, taperDb: 10 * Math.log10(at(axis, axisTm) / at(h, hTm)) };
+  const levels = [at(e, eTm), at(h, hTm)] as const;
+  return {
+    ratio,
+    taperDb: 10 * Math.log10((2 * at(axis, axisTm)) / (levels[0] + levels[1])),
+    planeDifferenceDb: 10 * Math.log10(levels[0] / levels[1]),
+  };
 }
 
 const difference = (p: Complex, q: Complex): Complex => ({ re: p.re - q.re, im: p.im - q.im });

@@ -7,6 +7,7 @@ import type { Candidate, UnrealizableHorn } from "../candidate.ts";
 import type { Flare } from "../flare.ts";
 import { type MouthFound, mouthForTaper } from "../mouth.ts";
 import {
+  db,
   ghz,
   largestRadiusWaves,
   metSentence,
@@ -80,6 +81,7 @@ export function dualModeHorn(requirement: FeedRequirement, limits: HornLimits = 
 
 interface Attempt {
   geometry: DualModeGeometry;
+  planeDifferenceDb: number;
 }
 
 interface StepWindow {
@@ -144,7 +146,7 @@ function withStep(
     });
 
   const { flare } = found;
-  const modeRatio = balancedMouth(flare, bandCenter, halfAngle).ratio;
+  const { ratio: modeRatio, planeDifferenceDb } = balancedMouth(flare, bandCenter, halfAngle);
   if (!(modeRatio > 0))
     return unrealizable(
       "dualMode",
@@ -152,7 +154,7 @@ function withStep(
     );
   const inputRadius = inputForRatio(flare.startRadius, modeRatio, requirement);
   if (typeof inputRadius !== "number") return inputRadius;
-  return { geometry: phased({ flare, inputRadius, modeRatio, wall: limits.wall }, bandCenter) };
+  return { geometry: phased({ flare, inputRadius, modeRatio, wall: limits.wall }, bandCenter), planeDifferenceDb };
 }
 
 /** Radius before the step that launches the wanted ratio at band centre, or why there is none. */
@@ -194,7 +196,11 @@ function phased(
   return { ...bare, straightLength: (2 * Math.PI * turns - lead) / perLength, turns };
 }
 
-function candidate({ geometry }: Attempt, requirement: FeedRequirement, limits: KnownLimits): Candidate {
+function candidate(
+  { geometry, planeDifferenceDb }: Attempt,
+  requirement: FeedRequirement,
+  limits: KnownLimits,
+): Candidate {
   const { flare, turns, modeRatio } = geometry;
   const outerDiameter = 2 * (flare.radius + limits.wall);
   const tooWide = refusedByDiameter("dualMode", outerDiameter, { requirement, limits });
@@ -205,11 +211,15 @@ function candidate({ geometry }: Attempt, requirement: FeedRequirement, limits: 
     shortened: flare.phaseError > limits.phaseError * (1 + 1e-9),
     length,
   });
+  const planes =
+    Math.abs(planeDifferenceDb) < 0.01
+      ? "both planes equal"
+      : `the planes as equal as this phase error lets it, ${db(planeDifferenceDb)} apart,`;
   const slow = turns > 1 ? `; TE11 falls ${turns} turns behind TM11 on the way, which narrows the band` : "";
   return {
     feasible: true,
     kind: "dualMode",
-    reason: `${met}; TM11 ${(20 * Math.log10(modeRatio)).toFixed(1).replace("-", "−")} dB against TE11 makes both planes equal at the rim${slow}; the closed form places this balance to about 3 % in frequency.`,
+    reason: `${met}; TM11 ${(20 * Math.log10(modeRatio)).toFixed(1).replace("-", "−")} dB against TE11 makes ${planes} at the rim${slow}; the closed form places this balance to about 3 % in frequency.`,
     profile: dualModeProfile(geometry),
     throatRadius: geometry.inputRadius,
     apertureRadius: flare.radius,

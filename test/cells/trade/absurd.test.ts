@@ -83,7 +83,7 @@ function run(given: Given) {
   });
   expect(firstNotFinite(trade)).toBeNull();
   for (const { edgeTaperDb } of trade.rows)
-    if (edgeTaperDb !== null) expect(Math.abs(edgeTaperDb - given.edgeTaperDb)).toBeLessThan(0.05);
+    if (edgeTaperDb !== null) expect(Math.abs(edgeTaperDb - given.edgeTaperDb)).toBeLessThan(0.01);
   return trade;
 }
 

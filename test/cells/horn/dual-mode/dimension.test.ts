@@ -134,6 +134,15 @@ describe("dualModeHorn", () => {
     );
   });
 
+  test("with much phase error no TM11 makes the planes equal: the mean still meets the taper, and the reason says so", () => {
+    const asked = { ...askedBy(0.9, ...xBand, 16), dishDiameter: 2.4 };
+    const horn = built(dualModeHorn(asked, { phaseError: 0.3 }));
+    expect(horn.reason).toMatch(/as equal as this phase error lets it, \d\.\d\d dB apart/);
+    const level = levelAt(closedFormPattern(horn, asked.bandCenter), asked.halfAngle);
+    assertClose(level.meanDb, -asked.feedTaperDb, { abs: 2e-3, because: "radius to 1e-5, ratio to 1e-6" });
+    expect(Math.abs(level.ePlaneDb - level.hPlaneDb)).toBeGreaterThan(0.1);
+  });
+
   test("profile: straight, step, straight, cone to z = 0", () => {
     const horn = built(dualModeHorn(askedBy(0.8, ...xBand)));
     const { z, radius } = horn.profile;

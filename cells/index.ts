@@ -1,0 +1,46 @@
+// The physicist's entrance: what the rooms of cells/ offer, in the order in which a signal meets them on its way out.
+// Everything is SI and linear unless its name says otherwise; time e^{+jωt}; +z out of the horn, mouth at z = 0.
+// What isn't listed here (kernels, tables, the folders of one kind of horn) is for the rooms themselves.
+
+// Ground: constants, units, how a result says that it is in doubt.
+export { ConvergenceError, type Warning, type WarningCode } from "./check.ts";
+export { speedOfLight, vacuumImpedance, vacuumPermeability } from "./constants.ts";
+// Guide: the modes of a smooth circular guide and of a corrugated one.
+export * from "./guide/hybrid.ts";
+export { hybridField } from "./guide/hybrid-field.ts";
+export * from "./guide/mode.ts";
+export {
+  balancedFrequency,
+  balancedSlotDepth,
+  type CapacitiveWindow,
+  capacitiveWindow,
+  type Slot,
+  slotReactance,
+  slowWaveLimit,
+} from "./guide/slot.ts";
+// Horn: one folder a kind. First dimensions for what a dish asks, or the reason why there are none; pattern, modes at the mouth, loss.
+export * from "./horn/index.ts";
+
+// Pattern: the one form in which every feed hands its far field on, and what can be read from it.
+export * from "./pattern/cuts.ts";
+export type { FeedPattern } from "./pattern/feed-pattern.ts";
+export { cosineFeed, gaussianFeed } from "./pattern/ideal-feeds.ts";
+export { resample } from "./pattern/interpolant.ts";
+export { movedPhaseOrigin, type PhaseCenter, phaseCenter } from "./pattern/phase-center.ts";
+export { apertureDirectivity, boresightIntensity, directivity, radiatedPower } from "./pattern/power.ts";
+
+// Radiation: from what stands at a mouth to its far field.
+export type { ApertureModes } from "./radiation/aperture-modes.ts";
+export { aperturePattern } from "./radiation/aperture-pattern.ts";
+export { hybridModePattern, hybridPattern } from "./radiation/hybrid-pattern.ts";
+// Reflector: the dish, what it asks of a feed, what it makes of one.
+export * from "./reflector/dish.ts";
+export * from "./reflector/efficiency.ts";
+export { phaseCenterOverDish } from "./reflector/feed-position.ts";
+export * from "./reflector/losses.ts";
+export * from "./reflector/requirement.ts";
+// Trade: every candidate over the band, side by side, judged.
+export * from "./trade/over-band.ts";
+export * from "./trade/trade-table.ts";
+export * from "./trade/verdict.ts";
+export * from "./units.ts";
