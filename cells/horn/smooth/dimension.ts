@@ -76,7 +76,7 @@ export function smoothHorn(requirement: FeedRequirement, limits: HornLimits = {}
 }
 
 /** TM01 or TE21 in the throat: a body of revolution doesn't raise them, a skewed transition before it does. */
-export function throatWarnings(throatRadius: number, bandHigh: number): Warning[] {
+function throatWarnings(throatRadius: number, bandHigh: number): Warning[] {
   const start = cutoffFrequency(TM01, throatRadius);
   if (bandHigh <= start) return [];
   const te21 = cutoffFrequency(TE21, throatRadius);
