@@ -43,7 +43,8 @@ interface ModeWave {
  *
  * Left out: currents on rim and outer wall, the mouth's own reflection, and for the flare the change of direction of
  * the field across the cap. Against a solution of the whole metal, boresight directivity of horns over 2 λ wide differs
- * by 0.02–0.15 dB and cross-polar by 0.1–2 dB.
+ * by 0.02–0.15 dB and cross-polar by 0.1–2 dB. The cap alone (TE11 under it, against mode matching of a cone of 14°
+ * half-angle, 2.4–2.9 λ wide): directivity within 0.04 dB, field within 1.7 % of boresight, cross-polar within 0.3 dB.
  *
  * @param modes amplitudes in √W, [2·modePairs] in the order TE11, TM11, TE12, …
  * @returns pattern in √(W/sr) with phases at the centre of the aperture; aperturePower is Σ|a|² of the travelling modes

@@ -29,7 +29,9 @@ export interface HybridAperture extends ApertureOptions {
  * the J2 parts (hybrid-field.ts). Balanced (Λ = 1), the J2 parts of E and H cancel in the far field, which is then alike
  * in all planes: no cross-polar. Off balance they don't, and that is the cross-polar over the band.
  *
- * Left out: as `aperturePattern`, and the other modes (EH12 above all), whose share a converter sets.
+ * Left out: as `aperturePattern`, and the other modes (EH12 above all), whose share a converter sets. Against mode
+ * matching of a corrugated horn of 10° half-angle, 2.5–2.8 λ wide: directivity within 0.12 dB; cross-polar within 0.5 dB
+ * where Λ is 1.09 (−40 dB), but far too low at balance, where the other modes leave −42 dB.
  *
  * @returns pattern in √(W/sr), phases at the centre of the aperture; aperturePower = power
  * @throws {RangeError} an argument not positive, radius below the HE11 cutoff, slant not above the radius
