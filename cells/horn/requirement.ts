@@ -1,6 +1,6 @@
 // What a horn is asked for, and what it may not exceed. The dish (to the right of horn) fills the first, the reader the second.
 
-import { requireNumber, requirePositive } from "../check.ts";
+import { requireNumber, requirePositive, type Warning } from "../check.ts";
 
 /** What a dish asks of its feed. Plain data. */
 export interface FeedRequirement {
@@ -70,4 +70,22 @@ export function checkedLimits(where: string, requirement: FeedRequirement, limit
     toothThickness: requirePositive(`${where}: tooth thickness`, limits.toothThickness ?? 0.8e-3, "m"),
     wall: requirePositive(`${where}: wall`, limits.wall ?? 2e-3, "m"),
   };
+}
+
+/**
+ * Radius over TE11 cutoff radius at the lower band edge. A throat keeps at least 1.15, where standard circular guides begin
+ * their bands (IEC 60153-4, from memory). A mouth for a deep dish may be narrower, down to 1.1, and then is its own throat:
+ * match and beam then change quickly at the lower edge, which the horn says in a warning.
+ */
+export const cutoffFactor = { throat: 1.15, mouth: 1.1 } as const;
+
+/** The warning for a guide nearer to cutoff than a standard one. */
+export function nearCutoffWarnings(factor: number): Warning[] {
+  if (factor >= cutoffFactor.throat - 1e-9) return [];
+  return [
+    {
+      code: "outside-validated-range",
+      text: `The horn is only ${factor.toFixed(3)} times as wide as TE11 needs at the lower band edge, where ${cutoffFactor.throat} is usual: match and beam change quickly there, more than the model says.`,
+    },
+  ];
 }

@@ -18,7 +18,14 @@ import {
   refusedByTaper,
   unrealizable,
 } from "../refusal.ts";
-import { checkedLimits, type FeedRequirement, type HornLimits, type KnownLimits } from "../requirement.ts";
+import {
+  checkedLimits,
+  cutoffFactor,
+  type FeedRequirement,
+  type HornLimits,
+  type KnownLimits,
+  nearCutoffWarnings,
+} from "../requirement.ts";
 import {
   type CorrugatedGeometry,
   converterCount,
@@ -40,9 +47,8 @@ const longestPitch = 1 / 5;
 const shortestPitch = 1 / 10;
 const preferredSlotFill = 0.75;
 const leastSlotFill = 0.7;
-/** ka of the throat at band centre; at least so many TE11 cutoff radii at the lower band edge; at most this ka at the upper, short of TM11's 3.83 */
+/** ka of the throat at band centre; at most this ka at the upper, short of TM11's 3.83 */
 const throatKa = 3;
-const te11Margin = 1.15;
 const largestThroatKa = 3.7;
 /** Lower band edge over balanced frequency, at least: a slow wave begins at about 0.92. */
 const leastBandLow = 0.95;
@@ -72,6 +78,7 @@ export function corrugatedHorn(requirement: FeedRequirement, limits: HornLimits 
   const throatRadius = throat as number;
 
   const balanceFrequency = Math.min(bandCenter, bandLow / leastBandLow);
+  const cutoff = cutoffRadius(TE11, bandLow);
   const throatLength = wavelength / 4;
   const found = mouthForTaper({
     taperOf: (flare) => {
@@ -80,7 +87,7 @@ export function corrugatedHorn(requirement: FeedRequirement, limits: HornLimits 
       return -levelAt(he11Pattern({ flare, last, slotFill }, bandCenter, thetaCount), halfAngle).meanDb;
     },
     wantedDb: feedTaperDb,
-    smallest: Math.min(throatRadius, te11Margin * cutoffRadius(TE11, bandLow)),
+    smallest: cutoffFactor.mouth * cutoff,
     largest: largestRadiusWaves * wavelength,
     startRadiusFor: (radius) => Math.min(throatRadius, radius),
     wavelength,
@@ -92,7 +99,7 @@ export function corrugatedHorn(requirement: FeedRequirement, limits: HornLimits 
     return refusedByMouth("corrugated", found, {
       requirement,
       limits: known,
-      smallestMouth: `${te11Margin} times the TE11 cutoff radius at ${ghz(bandLow)}`,
+      smallestMouth: `${cutoffFactor.mouth} times the TE11 cutoff radius at ${ghz(bandLow)}`,
       pattern: "HE11",
       otherLength: throatLength,
     });
@@ -141,7 +148,7 @@ function combFor(tooth: number, wavelength: number): Comb | UnrealizableHorn {
 /** Throat radius that carries TE11 with margin and keeps TM11 away over the band. */
 function throatFor({ bandLow, bandCenter, bandHigh }: FeedRequirement): number | UnrealizableHorn {
   const perKa = (frequency: number): number => speedOfLight / (2 * Math.PI * frequency);
-  const narrowest = te11Margin * cutoffRadius(TE11, bandLow);
+  const narrowest = cutoffFactor.throat * cutoffRadius(TE11, bandLow);
   const widest = largestThroatKa * perKa(bandHigh);
   if (narrowest > widest)
     return unrealizable(
@@ -212,6 +219,6 @@ function candidate(
     outerDiameter,
     dimensions: corrugatedDimensions(geometry),
     geometry,
-    warnings: [],
+    warnings: nearCutoffWarnings(flare.startRadius / cutoffRadius(TE11, requirement.bandLow)),
   };
 }

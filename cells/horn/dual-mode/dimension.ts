@@ -19,6 +19,7 @@ import {
 } from "../refusal.ts";
 import {
   checkedLimits,
+  cutoffFactor,
   type FeedRequirement,
   type HornLimits,
   type KnownLimits,
@@ -32,8 +33,6 @@ import { travelToMouth } from "./travel.ts";
 /** Margins in radius, common practice: TM11 above cutoff at the lower band edge; TE12, and TM11 before the step, below it at the upper. */
 const tm11Margin = 1.05;
 const cutOffMargin = 0.97;
-/** TE11 cutoff radii in the input guide at the lower band edge, at least. */
-const te11Margin = 1.15;
 /** Diameter behind the step where the window allows it, wavelengths at band centre: in the middle of 1.22…1.70. */
 const preferredStepDiameter = 1.37;
 /** Narrow over wide radius at the step, a little inside what `stepCoupling` accepts. */
@@ -163,7 +162,7 @@ function inputForRatio(
   modeRatio: number,
   { bandLow, bandCenter, bandHigh }: FeedRequirement,
 ): number | UnrealizableHorn {
-  const narrowest = Math.max(te11Margin * cutoffRadius(TE11, bandLow), leastStep * stepRadius);
+  const narrowest = Math.max(cutoffFactor.throat * cutoffRadius(TE11, bandLow), leastStep * stepRadius);
   const widest = Math.min(cutOffMargin * cutoffRadius(TM11, bandHigh), largestStep * stepRadius);
   const ratioOf = (radius: number): number => stepLaunch(stepCoupling(radius, stepRadius), bandCenter).ratio;
   const most = narrowest < widest ? ratioOf(narrowest) : 0;

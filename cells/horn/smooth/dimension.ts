@@ -8,13 +8,18 @@ import type { Candidate } from "../candidate.ts";
 import { coarseThetaCountFor } from "../kind.ts";
 import { mouthForTaper } from "../mouth.ts";
 import { ghz, largestRadiusWaves, metSentence, refusedByDiameter, refusedByMouth, refusedByTaper } from "../refusal.ts";
-import { checkedLimits, type FeedRequirement, type HornLimits } from "../requirement.ts";
+import {
+  checkedLimits,
+  cutoffFactor,
+  type FeedRequirement,
+  type HornLimits,
+  nearCutoffWarnings,
+} from "../requirement.ts";
 import { type SmoothGeometry, smoothDimensions, smoothProfile } from "./geometry.ts";
 import { te11Pattern } from "./model.ts";
 
-/** Throat over TE11 cutoff at the lower band edge: wanted, and the least for which the dispersion is still mild. Common practice. */
+/** Throat over TE11 cutoff at the lower band edge, where the mouth allows it. Common practice: 1.15 to 1.25. */
 const throatFactor = 1.2;
-const leastThroatFactor = 1.15;
 /** Distance that TM01 keeps from the upper band edge where the throat can give it. */
 const tm01Margin = 1.01;
 
@@ -34,12 +39,12 @@ export function smoothHorn(requirement: FeedRequirement, limits: HornLimits = {}
 
   const cutoff = cutoffRadius(TE11, bandLow);
   const singleModed = cutoffRadius(TM01, bandHigh) / tm01Margin / cutoff;
-  const throat = cutoff * Math.min(throatFactor, Math.max(leastThroatFactor, singleModed));
+  const throat = cutoff * Math.min(throatFactor, Math.max(cutoffFactor.throat, singleModed));
   const found = mouthForTaper({
     taperOf: (flare) =>
       -levelAt(te11Pattern(flare, bandCenter, coarseThetaCountFor(flare.radius, bandCenter)), halfAngle).meanDb,
     wantedDb: feedTaperDb,
-    smallest: cutoff * leastThroatFactor,
+    smallest: cutoff * cutoffFactor.mouth,
     largest: largestRadiusWaves * wavelength,
     startRadiusFor: (radius) => Math.min(throat, radius),
     wavelength,
@@ -50,7 +55,7 @@ export function smoothHorn(requirement: FeedRequirement, limits: HornLimits = {}
     return refusedByMouth("smooth", found, {
       requirement,
       limits: known,
-      smallestMouth: `${leastThroatFactor} times the TE11 cutoff radius at ${ghz(bandLow)}`,
+      smallestMouth: `${cutoffFactor.mouth} times the TE11 cutoff radius at ${ghz(bandLow)}`,
       pattern: "TE11",
       otherLength: 0,
     });
@@ -71,7 +76,7 @@ export function smoothHorn(requirement: FeedRequirement, limits: HornLimits = {}
     outerDiameter,
     dimensions: smoothDimensions(geometry),
     geometry,
-    warnings: throatWarnings(flare.startRadius, bandHigh),
+    warnings: [...nearCutoffWarnings(flare.startRadius / cutoff), ...throatWarnings(flare.startRadius, bandHigh)],
   };
 }
 

@@ -179,10 +179,18 @@ describe("corrugatedHorn", () => {
     expect(reason(askedBy(0.8, 8, 16))).toMatch(
       /too wide for one throat: TE11 at 8\.000 GHz asks .* at least 12\.6 mm/,
     );
-    expect(reason(askedBy(0.35, ...xBand))).toMatch(/a dish this deep usually takes a choke-ring or wide-flare feed/);
+    expect(reason(askedBy(0.3, ...xBand))).toMatch(/a dish this deep usually takes a choke-ring or wide-flare feed/);
     expect(reason(askedBy(6, ...xBand), { phaseError: 0.05 })).toMatch(/take \d{4} corrugations; more than 2000/);
     expect(reason(askedBy(0.8, ...xBand), { maxLength: 0.02 })).toMatch(/where 20\.0 mm is allowed/);
     expect(reason(askedBy(0.8, ...xBand), { maxDiameter: 0.08 })).toMatch(/95\.0 mm across its walls/);
+  });
+
+  test("a deep dish takes a mouth near cutoff and says so", () => {
+    const asked = askedBy(0.35, ...xBand);
+    const horn = built(corrugatedHorn(asked));
+    expect(horn.warnings[0]?.text).toMatch(/^The horn is only 1\.1\d\d times as wide as TE11 needs/);
+    const { meanDb } = levelAt(closedFormPattern(horn, asked.bandCenter), asked.halfAngle);
+    assertClose(meanDb, -asked.feedTaperDb, { abs: 2e-3, because: "radius to 1e-5" });
   });
 
   test("thicker teeth take a wider pitch, still no thinner than the limit", () => {
