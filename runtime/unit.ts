@@ -38,6 +38,7 @@ const KINDS: Record<string, string> = {
   "s3*A2/kg*m3": "conductivity",
   "kg*m2/s3*m2": "power density",
   magnetism: "magnetic field strength",
+  "dB/m": "attenuation",
 };
 
 /** Often written, meant to be one of these. */
@@ -121,7 +122,7 @@ function readUnit(text: string): Unit {
   }
   const quantity = libraryUnit(text);
   if (!quantity) throw new QuantityError(unknownUnit(text));
-  // The library calls a percentage and a plain number alike; a decibel inside a compound has no linear meaning here.
+  // A slope ("mm/m") is a plain number, as a percentage is.
   const dimension = quantity
     .toBase()
     .units()

@@ -134,16 +134,34 @@ function plain(where: string, value: string | number): string {
 /** Progress of heavy work, 0..1; a function of cells/ takes it as its last parameter. */
 export type Progress = (fraction: number) => void;
 
+/** Parameters without the Progress at their end, if there is one. */
+type BeforeProgress<P extends unknown[]> =
+  Required<P> extends [...unknown[], infer Last]
+    ? Last extends Progress
+      ? Progress extends Last
+        ? WithoutLast<P>
+        : P
+      : P
+    : P;
+type WithoutLast<P extends unknown[]> = P extends [...infer A, unknown] ? A : P extends [...infer A, unknown?] ? A : P;
+
+/** All of them, optional ones included: the progress callback follows the last argument, so none may be left out. */
+type AllOf<P extends unknown[]> = Unboxed<Required<Boxed<P>>>;
+type Boxed<P extends unknown[]> = { [K in keyof P]: [P[K]] };
+type Unboxed<P extends unknown[]> = { [K in keyof P]: P[K] extends [infer T] ? T : never };
+
 /**
  * Heavy work, off the main thread: const sweep = await background(overBand, horn, dish). A study run by the engine reports its
  * progress and drops it as soon as an input moves; in a plain module this just calls the function.
  *
- * @param heavy a function imported from cells/, or of this notebook if it reads no given; its parameter after `args` may be a
- *              Progress. Arguments and result travel by structured clone: plain data, no functions.
+ * @param heavy a function imported from cells/, or of this notebook if it reads no given; its last parameter may be a Progress,
+ *              which it then receives
+ * @param args  all its other arguments (undefined for an optional one). Arguments and result travel by structured clone: plain
+ *              data, no functions.
  */
-export async function background<A extends unknown[], R>(
-  heavy: (...args: [...A, Progress?]) => R | Promise<R>,
-  ...args: A
-): Promise<R> {
-  return heavy(...(args as unknown as [...A, Progress?]));
+export async function background<F extends (...args: never[]) => unknown>(
+  heavy: F,
+  ...args: AllOf<BeforeProgress<Parameters<F>>>
+): Promise<Awaited<ReturnType<F>>> {
+  return (await heavy(...(args as never[]))) as Awaited<ReturnType<F>>;
 }

@@ -1,9 +1,13 @@
+import { readFileSync } from "node:fs";
+import { dirname } from "node:path";
 import { describe, expect, test } from "vitest";
 import { CellError } from "../../runtime/cell-error.ts";
+import { compileNotebook } from "../../runtime/compile.ts";
 import { createStudy } from "../../runtime/engine.ts";
 import { evaluateNotebook } from "../../runtime/headless.ts";
 import { nonFinitePath } from "../../runtime/non-finite.ts";
-import { loadNotebook } from "./load-notebook.ts";
+import * as plain from "./fixtures/small-notebook.ts";
+import { bundled, importText, loadNotebook } from "./load-notebook.ts";
 
 const BODY = `
 const dish = given("2.4 m", { label: "Dish", why: "", min: "0.3 m", max: "20 m" });
@@ -56,9 +60,28 @@ describe("evaluateNotebook", () => {
     });
   });
 
-  test("is the module's own values: a notebook without the engine gives the same", async () => {
-    const { area } = { area: Math.PI * (2.4 / 2) ** 2 };
-    expect((await evaluateNotebook(await loadNotebook(BODY))).cells.area).toBe(area);
+  test("a notebook imported as a plain module has the same values, givens at their defaults", async () => {
+    const file = new URL("./fixtures/small-notebook.ts", import.meta.url).pathname;
+    const { code, problems, cells } = compileNotebook(readFileSync(file, "utf8"), "small-notebook.ts");
+    expect(problems).toEqual([]);
+    const { notebook } = await importText(await bundled(code, "small-notebook.ts", { from: dirname(file) }));
+    const study = createStudy(notebook);
+    await study.settled();
+    const exported = Object.entries(plain);
+    expect(exported.length).toBeGreaterThan(10);
+    for (const [name, value] of exported) expect(study.cell(name).value, name).toEqual(value);
+    expect(cells.filter(({ role }) => role === "given").map(({ name }) => name)).toEqual([
+      "dish",
+      "low",
+      "kind",
+      "blocked",
+    ]);
+    expect(cells.filter(({ background }) => background).map(({ name }) => name)).toEqual(["sweep"]);
+    expect(study.cell("beside").beside).toBe("gains");
+    study.set("dish", "94 in");
+    await study.settled();
+    expect(study.cell("radius").value).toBe(2.3876 / 2);
+    study.dispose();
   });
 });
 

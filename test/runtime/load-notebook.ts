@@ -8,14 +8,14 @@ const notebooks = new URL("../../notebooks/", import.meta.url).pathname;
 export const VOCABULARY =
   'import { background, caution, figure, given, head, lead, margin, markdown, note, show, table } from "../runtime/index.ts";';
 
-/** Bundles TypeScript that stands in notebooks/ as one ES module. */
+/** Bundles TypeScript that stands in notebooks/ (or another folder) as one ES module. */
 export async function bundled(
   contents: string,
   sourcefile: string,
-  options: { sourcemap?: boolean } = {},
+  options: { sourcemap?: boolean; from?: string } = {},
 ): Promise<string> {
   const result = await build({
-    stdin: { contents, sourcefile, loader: "ts", resolveDir: notebooks },
+    stdin: { contents, sourcefile, loader: "ts", resolveDir: options.from ?? notebooks },
     bundle: true,
     format: "esm",
     platform: "node",

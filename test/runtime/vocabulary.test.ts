@@ -290,3 +290,19 @@ test("background, in a plain module: calls the function", async () => {
     }),
   ).rejects.toThrow("no");
 });
+
+test("background: the argument list is checked against the function's own, progress left out and nothing else", () => {
+  const banded = (d: number, band: readonly [number, number], progress?: Progress) => ({ d, band, progress });
+  const optional = (d: number, options?: { x: number }, progress?: Progress) => ({ d, options, progress });
+  const typed = () => {
+    const result: Promise<{ d: number }> = background(banded, 1, [1, 2]);
+    // @ts-expect-error a third frequency
+    void background(banded, 1, [1, 2, 3]);
+    // @ts-expect-error an optional argument left out would let progress slip into its place
+    void background(optional, 1);
+    void background(optional, 1, undefined);
+    return result;
+  };
+  // The compiler is the test: `tsc` refuses this file if one of the lines above were accepted.
+  expect(typed()).toBeInstanceOf(Promise);
+});
