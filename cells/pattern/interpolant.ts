@@ -17,7 +17,8 @@ export interface PatternInterpolant {
 
 /**
  * Cubic splines (not-a-knot) through the samples of both cuts.
- * @accuracy at 0.5° and k·radius ≤ 40, 1e-6 of boresight; the error falls with the fourth power of the spacing
+ * @accuracy of boresight, at 0.5°: 3e-7 for an aperture of k·radius = 10, 4e-6 for 20, 6e-5 for 40; the error goes as the
+ *           fourth power of k·radius times the spacing (test/cells/radiation/sampling)
  * @throws {RangeError} not a pattern
  */
 export function patternInterpolant(pattern: FeedPattern): PatternInterpolant {

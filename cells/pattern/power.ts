@@ -10,7 +10,7 @@ import { requirePattern, thetaQuadrature } from "./theta-grid.ts";
  *
  * The two principal cuts give the φ-average exactly, because the pattern is cos φ and sin φ only.
  *
- * @accuracy 1e-12 for a computed aperture pattern at 361 angles and ka ≤ 60 (test/cells/pattern/power)
+ * @accuracy 1e-12 for a computed aperture pattern at 361 angles and ka ≤ 60 (test/cells/radiation/sampling)
  * @throws {RangeError} not a pattern
  */
 export function radiatedPower(pattern: FeedPattern): number {

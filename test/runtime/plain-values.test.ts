@@ -43,7 +43,9 @@ test("studyValues: a number that isn't finite, or a value that holds itself, is 
   const ring: { self?: unknown } = {};
   ring.self = ring;
   const shared = { a: 1 };
-  const { cells, warnings } = studyValues(studyOf({ a: { b: [0, Number.NaN] }, c: -1 / 0, ring, twice: [shared, shared] }));
+  const { cells, warnings } = studyValues(
+    studyOf({ a: { b: [0, Number.NaN] }, c: -1 / 0, ring, twice: [shared, shared] }),
+  );
   expect(cells).toEqual({ a: { b: [0, null] }, c: null, ring: { self: null }, twice: [{ a: 1 }, { a: 1 }] });
   expect(warnings.map(({ cell, code, text }) => [cell, code, text])).toEqual([
     ["a", "not-finite", "a.b[1] is NaN"],
@@ -78,11 +80,15 @@ test("studyValues: a warning is shown also in a table's word or a figure's capti
   const row = { label: "Horn", cells: [{ text: "3 s", word: "is slow" }] };
   expect(shows("is slow", { shows: "table", columns: [], rows: [row] })).toBe(true);
   expect(shows("is fast", { shows: "table", columns: [], rows: [row] })).toBe(false);
-  expect(shows("far off", { shows: "figure", caption: "The dish, far off.", drawing: { alt: "", draw: () => null } })).toBe(true);
+  expect(
+    shows("far off", { shows: "figure", caption: "The dish, far off.", drawing: { alt: "", draw: () => null } }),
+  ).toBe(true);
 });
 
 test("studyValues: a failed cell has no value but its reason and where it began", () => {
   const { cells, failed } = studyValues(studyOf({ fine: 1, lost: new RangeError("no such horn") }));
   expect(cells).toEqual({ fine: 1 });
-  expect(failed).toEqual([{ cell: "lost", reason: "no such horn", began: "root", file: "a.ts", line: 7, path: ["root", "lost"] }]);
+  expect(failed).toEqual([
+    { cell: "lost", reason: "no such horn", began: "root", file: "a.ts", line: 7, path: ["root", "lost"] },
+  ]);
 });
