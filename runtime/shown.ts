@@ -100,7 +100,51 @@ export interface Table {
   data?: (string | number)[][];
 }
 
-export type Shown = Head | Note | Lead | MarginNote | Caution | Figure | Table;
+/** A number that a decision rested on. Values in SI; `unit`, `perUnit` and `digits` say how both are shown. */
+export interface RestedOn {
+  label: string;
+  /** as agreed that day */
+  agreed: number;
+  now: number;
+  /** may move by this much either way, > 0 */
+  tolerance: number;
+  /** "dBi", "mm"; empty for a plain ratio */
+  unit: string;
+  /** the SI value of one `unit`; 1 for a level in dB */
+  perUnit: number;
+  /** decimal places of the shown value */
+  digits: number;
+  moved: boolean;
+}
+
+/** A former agreement, kept readable. Oldest first in `Rationale.history`. */
+export interface FormerAgreement {
+  author: string;
+  /** ISO 8601, the day */
+  date: string;
+  /** by the label they had then, in SI */
+  agreed: { label: string; value: number; unit: string; perUnit: number; digits: number }[];
+}
+
+/** A decision with what it rested on. Stands in the margin beside its figure or table (`CompiledCell.beside`). */
+export interface Rationale {
+  shows: "rationale";
+  /** what was decided, one sentence */
+  decision: string;
+  /** the candidate chosen, in the study's own word */
+  chosen: string;
+  /** reasons, Markdown, with live numbers */
+  markdown: string;
+  author: string;
+  /** ISO 8601, the day of the agreement */
+  date: string;
+  /** the file it was forked from, when nobody has confirmed it here yet */
+  inherited?: string;
+  numbers: RestedOn[];
+  history: FormerAgreement[];
+}
+
+export type Shown = Head | Note | Lead | MarginNote | Caution | Figure | Table | Rationale;
 
 /** True for a value that the page shows; anything else is a plain value of the study. */
 export function isShown(value: unknown): value is Shown {
