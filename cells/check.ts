@@ -61,7 +61,8 @@ export function requireNumber(where: string, value: unknown, range: Range = {}):
     (range.max === undefined || value <= range.max) &&
     (range.above === undefined || value > range.above) &&
     (range.below === undefined || value < range.below);
-  if (!ok) throw new RangeError(`${where} must be ${rangeWords(range)}; got ${value}${Number.isFinite(value) ? unit : ""}`);
+  if (!ok)
+    throw new RangeError(`${where} must be ${rangeWords(range)}; got ${value}${Number.isFinite(value) ? unit : ""}`);
   return value;
 }
 

@@ -2,33 +2,11 @@
 import { checkModule } from "./compile/check-cells.ts";
 import { draftModule } from "./compile/draft.ts";
 import { emitModule } from "./compile/emit.ts";
+import type { Problem } from "./compile/parts.ts";
 import { parseModule } from "./compile/syntax.ts";
 import type { CompiledCell } from "./study.ts";
 
-/** What is wrong in a notebook, and where. */
-export interface Problem {
-  kind:
-    | "parse"
-    | "duplicate"
-    | "unknown-name"
-    | "missing-import"
-    | "cycle"
-    | "use-before-definition"
-    | "assignment"
-    | "given"
-    | "background"
-    | "margin"
-    | "statement";
-  /** one sentence */
-  message: string;
-  file: string;
-  /** 1-based */
-  line: number;
-  /** 1-based */
-  column: number;
-  /** the cell that has no value because of it; none if the whole file cannot be read */
-  cell?: string;
-}
+export type { Problem };
 
 /** A cell without its code: what is known before anything runs. */
 export type CellInfo = Omit<CompiledCell, "define">;

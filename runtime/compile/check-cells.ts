@@ -1,31 +1,11 @@
 // The rules of a notebook: drafts of cells into cells with inputs, and every breach of a rule into a problem that names its cell.
-import type { Problem } from "../compile.ts";
 import { cyclesOf } from "../graph.ts";
-import type { CompiledCell } from "../study.ts";
 import type { Draft, ModuleDraft } from "./draft.ts";
 import { IMPURE_GLOBALS, KNOWN_GLOBALS, VOCABULARY } from "./known-globals.ts";
+import type { CellDraft, CheckedModule, Problem, Report } from "./parts.ts";
 import type { Reference } from "./scope.ts";
 import { identifierName, type Node, type ParsedModule } from "./syntax.ts";
 import { vocabularyUse } from "./vocabulary-use.ts";
-
-/** A cell before its code is written. */
-export interface CellDraft extends Omit<CompiledCell, "define" | "source"> {
-  draft: Draft;
-  /** a name taken from a destructuring */
-  part?: string;
-  /** role given: the end of the called name, where `.declare` goes */
-  declareAt?: number;
-}
-
-export interface CheckedModule {
-  cells: CellDraft[];
-  problems: Problem[];
-  /** import names and cells whose functions background() calls */
-  backgroundFunctions: { imports: string[]; cells: string[] };
-}
-
-/** Words a problem: the place is added from the node. */
-export type Report = (kind: Problem["kind"], message: string, node: Node, cell?: CellDraft) => void;
 
 export function checkModule(file: string, module: ModuleDraft, parsed: ParsedModule): CheckedModule {
   const problems: Problem[] = [];

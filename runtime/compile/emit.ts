@@ -1,7 +1,8 @@
 // The compiled module: the source edited in place, so that every line stays on its line, and a table of cells after its last.
-import type { CellDraft, CheckedModule } from "./check-cells.ts";
+
 import type { Draft, ModuleDraft } from "./draft.ts";
 import { isVocabularyModule } from "./known-globals.ts";
+import type { CellDraft, CheckedModule } from "./parts.ts";
 import { identifierName, type Node } from "./syntax.ts";
 
 interface Edit {

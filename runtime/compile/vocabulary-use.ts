@@ -1,7 +1,8 @@
 // What a cell's calls into the vocabulary say before anything runs: it is a given, it stands beside a cell, it works in the background.
-import type { CellDraft, Report } from "./check-cells.ts";
+
 import type { ModuleDraft } from "./draft.ts";
 import { isVocabularyModule } from "./known-globals.ts";
+import type { CellDraft, Report } from "./parts.ts";
 import { child, children, identifierName, memberPath, type Node, rootIdentifier, unwrapped } from "./syntax.ts";
 
 const GIVEN_FORMS = new Set(["given", "given.choice", "given.switch", "given.text"]);
