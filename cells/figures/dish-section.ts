@@ -1,13 +1,13 @@
 // The dish in section: where its rim stands as the feed sees it, and how small the feed is beside it.
 
 import { requireNumber } from "../check.ts";
+import { outerWall } from "../horn/workshop/metal.ts";
 import type { Dish } from "../reflector/dish.ts";
 import { toDeg, toMm } from "../units.ts";
 import type { Drawing } from "./drawing.ts";
 import { type SectionedHorn, wallThickness } from "./horn-section.ts";
 import { chainLine, dimension } from "./kit/dimension.ts";
 import { facts, factsHeight } from "./kit/facts.ts";
-import { outerWall } from "./kit/metal-section.ts";
 import { control, ink, paper, secondary, tint } from "./kit/palette.ts";
 import { coordinate, drawingRoot, type Pen, pathThrough, svgPen, text, textBlock } from "./kit/svg.ts";
 import { textWidth } from "./kit/text-width.ts";

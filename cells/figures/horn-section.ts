@@ -1,10 +1,10 @@
 // One horn in section, mouth up: cut metal, axis, dimensions, what is special about its wall.
 
 import type { RealizableHorn } from "../horn/candidate.ts";
+import { largestInnerRadius, outerWall, wallFeatures } from "../horn/workshop/metal.ts";
 import { toMm } from "../units.ts";
 import { chainLine, dimension } from "./kit/dimension.ts";
 import { hatchPath } from "./kit/hatch.ts";
-import { largestInnerRadius, outerWall, wallFeatures } from "./kit/metal-section.ts";
 import { hairline, hollow, ink, paper, secondary, textSize } from "./kit/palette.ts";
 import { coordinate, type Pen, pathThrough, text } from "./kit/svg.ts";
 import { textWidth } from "./kit/text-width.ts";

@@ -1,7 +1,7 @@
 import { describe, expect, test } from "vitest";
-import { largestInnerRadius, outerWall, wallFeatures } from "../../../cells/figures/kit/metal-section.ts";
-import { assertClose } from "../../assert-close.ts";
-import { corrugatedProfile } from "./examples.ts";
+import { largestInnerRadius, outerWall, wallFeatures } from "../../../../cells/horn/workshop/metal.ts";
+import { assertClose } from "../../../assert-close.ts";
+import { corrugatedProfile } from "../../figures/examples.ts";
 
 describe("features of a wall", () => {
   test("a step up alone is a diameter step", () => {

@@ -1,6 +1,6 @@
 // What a horn's inner wall says about its metal: steps, slots, and an outer wall that covers them.
 
-import type { HornProfile } from "../../horn/horn-profile.ts";
+import type { HornProfile } from "../horn-profile.ts";
 
 type ZR = readonly [z: number, radius: number];
 
