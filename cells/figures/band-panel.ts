@@ -47,10 +47,16 @@ const labelSize = textSize.axis;
 /** Curves of these styles are named in the legend, not at their ends. */
 const isLabelled = ({ style }: BandCurve): boolean => style === "full";
 
+/** The name of a curve at its end; an arrow where it ends below the floor. */
+const endLabel = ({ label }: BandCurve, hidden: boolean): string => (hidden ? `${label} ↓` : label);
+
 /** Room for the labels at the right of a frame, px. */
 export function labelRoom(panels: readonly BandPanelSpec[]): number {
-  const labels = panels.flatMap(({ curves }) =>
-    curves.filter(isLabelled).map(({ label }) => textWidth(label, labelSize)),
+  const labels = panels.flatMap(({ curves, floor = -Infinity }) =>
+    curves.filter(isLabelled).map((curve) => {
+      const hidden = !((curve.value.findLast((v) => v !== null) ?? -Infinity) >= floor);
+      return textWidth(endLabel(curve, hidden), labelSize);
+    }),
   );
   return Math.max(0, ...labels) + 20;
 }
@@ -170,7 +176,7 @@ function endLabels(
   const left = frame.left + frame.width;
   return ends.flatMap(({ one, y, hidden }, i) => {
     const at = placed[i]!;
-    const words = text(pen, left + 10, at + 4, hidden ? `${one.label} ↓` : one.label, {
+    const words = text(pen, left + 10, at + 4, endLabel(one, hidden), {
       size: labelSize,
       fill: kindStyle(one.kind).words,
     });

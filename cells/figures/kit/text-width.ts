@@ -9,15 +9,18 @@ const advances = [
   260, 334, 584,
 ];
 
-/** Other faces of the stack run up to 6 % wider. */
-const allowance = 1.06;
+/** A machine with none of the stack's faces falls back to DejaVu Sans, up to 16 % wider than Helvetica in words of ours. */
+const allowance = 1.17;
+
+/** Arrows and signs of mathematics, as wide as their widest face draws them. */
+const isSign = (code: number): boolean => code >= 0x2190 && code <= 0x22ff && code !== 0x2212;
 
 /** Width of a text in px, on the safe side for every face of the stack. */
 export function textWidth(words: string, size: number, bold = false): number {
   let sum = 0;
   for (const letter of words) {
     const code = letter.codePointAt(0)!;
-    sum += code >= 32 && code <= 126 ? advances[code - 32]! : code === 0xb0 ? 400 : 600;
+    sum += code >= 32 && code <= 126 ? advances[code - 32]! : code === 0xb0 ? 400 : isSign(code) ? 840 : 600;
   }
   return (sum / 1000) * size * allowance * (bold ? 1.06 : 1);
 }
