@@ -11,8 +11,8 @@ export interface Flare {
   radius: number;
   /** along the axis */
   length: number;
-  /** apex to rim of the mouth, along the wall; Infinity for a straight guide */
-  slant: number;
+  /** apex to rim of the mouth, along the wall; null for a straight guide, which has no apex */
+  slant: number | null;
   /** path excess of the spherical wave at the rim against the axis, wavelengths; about d²/(8·slant·λ) */
   phaseError: number;
 }
@@ -47,7 +47,7 @@ export function flareOfLength(
   requireNumber("flareOfLength: radius", radius, { min: startRadius, unit: "m" });
   requirePositive("flareOfLength: length", length, "m");
   const angle = Math.atan((radius - startRadius) / length);
-  const slant = angle === 0 ? Number.POSITIVE_INFINITY : radius / Math.sin(angle);
+  const slant = angle === 0 ? null : radius / Math.sin(angle);
   return { startRadius, radius, length, slant, phaseError: (radius * Math.tan(angle / 2)) / wavelength };
 }
 
@@ -70,6 +70,9 @@ export function shortestFlare(
   const length = Math.max(minLength, (from.radius - from.startRadius) / Math.tan(angle));
   return flareOfLength(from, length, wavelength);
 }
+
+/** The slant as the aperture integrals take it: Infinity, a flat mouth, for a straight guide. */
+export const capSlant = ({ slant }: Flare): number => slant ?? Number.POSITIVE_INFINITY;
 
 /** Radius of the flare's wall at a distance from its mouth: z in m, −length…0. */
 export function radiusAt(flare: Flare, z: number): number {

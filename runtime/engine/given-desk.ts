@@ -1,6 +1,7 @@
 // The givens of a running study: what was entered, what was refused, what the file says.
 import { type GivenDeclaration, type GivenReading, Refusal, readGiven } from "../given.ts";
 import type { CompiledCell, GivenView } from "../study.ts";
+import { unitNamed } from "../unit.ts";
 
 interface Entry extends GivenReading {
   declaration: GivenDeclaration;
@@ -100,10 +101,17 @@ export class GivenDesk {
       ...(min === undefined ? {} : { min }),
       ...(max === undefined ? {} : { max }),
       ...(step === undefined ? {} : { step }),
+      ...(form === "quantity" ? perUnitOf(unit) : {}),
       ...(options === undefined ? {} : { options: [...options] }),
       ...(entry.refusal === undefined ? {} : { refusal: { ...entry.refusal } }),
     };
   }
+}
+
+/** SI value of one unit, where a factor is all there is to it. */
+function perUnitOf(unitText: string): { perUnit?: number } {
+  const { scale, offset } = unitNamed(unitText);
+  return offset === 0 ? { perUnit: scale } : {};
 }
 
 function declarationOf(cell: CompiledCell): GivenDeclaration {

@@ -2,12 +2,11 @@
 
 import { readdir, readFile, symlink, writeFile } from "node:fs/promises";
 import { join } from "node:path";
-import { pathToFileURL } from "node:url";
-import type { Browser, Page } from "playwright-core";
+import type { Browser } from "playwright-core";
 import { afterAll, beforeAll, expect, test } from "vitest";
 import { readRecord } from "../../build/export-record.ts";
-import { assertClose } from "../assert-close.ts";
 import { launchBrowser } from "../browser.ts";
+import { expectAlike, openFile, pageValues, type Values } from "./exported-page.ts";
 import { fixtures, isOneSentence, ownFolder, projectRoot, run, smallNotebook, writeNotebook } from "./run-command.ts";
 import { shownText } from "./shown-text.ts";
 
@@ -16,57 +15,6 @@ beforeAll(async () => {
   browser = await launchBrowser();
 });
 afterAll(() => browser.close());
-
-/** What a page said that it shouldn't: errors, refusals of its policy, requests to anywhere. */
-interface Watched {
-  page: Page;
-  complaints: string[];
-  close(): Promise<void>;
-}
-
-async function openFile(path: string, { scripts }: { scripts: boolean }, fragment = ""): Promise<Watched> {
-  const context = await browser.newContext({ javaScriptEnabled: scripts, offline: true });
-  const page = await context.newPage();
-  const complaints: string[] = [];
-  page.on("pageerror", (error) => complaints.push(`error: ${error.message}`));
-  page.on("console", (message) => {
-    if (["error", "warning"].includes(message.type())) complaints.push(`console: ${message.text()}`);
-  });
-  page.on("request", (request) => {
-    if (!/^(file|blob|data):/.test(request.url())) complaints.push(`request: ${request.url()}`);
-  });
-  await page.goto(pathToFileURL(path).href + fragment);
-  return { page, complaints, close: () => context.close() };
-}
-
-interface Values {
-  givens: Record<string, unknown>;
-  cells: Record<string, unknown>;
-  failed: unknown[];
-}
-
-const pageValues = (page: Page): Promise<Values> =>
-  page.evaluate(async () => {
-    const handle = () => (globalThis as unknown as { hornbook?: { values(): Promise<never> } }).hornbook;
-    while (!handle()) await new Promise((resolve) => setTimeout(resolve, 10));
-    return handle()!.values();
-  });
-
-/** All numbers of two values are alike to 1e-12, everything else is equal. */
-function expectAlike(actual: unknown, expected: unknown, path = "values"): void {
-  if (typeof expected === "number") {
-    assertClose(actual as number, expected, {
-      rel: 1e-12,
-      abs: 1e-300,
-      because: `${path}: same source, another engine`,
-    });
-  } else if (typeof expected === "object" && expected !== null) {
-    expect(Object.keys(actual as object), path).toEqual(Object.keys(expected));
-    for (const [name, part] of Object.entries(expected)) {
-      expectAlike((actual as Record<string, unknown>)[name], part, `${path}.${name}`);
-    }
-  } else expect(actual, path).toEqual(expected);
-}
 
 async function headless(args: string[]): Promise<Values> {
   const { out, err } = await run(["values", smallNotebook, ...args]);
@@ -79,7 +27,7 @@ test("export: with scripts off the results can be read", async () => {
   const { code, out, err } = await run(["export", smallNotebook], { cwd: folder });
   expect([code, out]).toEqual([0, ""]);
   expect(err).toMatch(/^small\.html: \d+ kB, live\n$/);
-  const { page, complaints, close } = await openFile(join(folder, "small.html"), { scripts: false });
+  const { page, complaints, close } = await openFile(browser, join(folder, "small.html"), { scripts: false });
   const text = await shownText(page);
   const { cells } = await headless([]);
   expect(await page.title()).toBe("A ring of sheet metal");
@@ -106,7 +54,7 @@ test("export: with scripts off the results can be read", async () => {
 test("export: with scripts a turned given gives the numbers of `values`", async () => {
   const folder = await ownFolder();
   await run(["export", smallNotebook, "-o", "ring.html"], { cwd: folder });
-  const { page, complaints, close } = await openFile(join(folder, "ring.html"), { scripts: true });
+  const { page, complaints, close } = await openFile(browser, join(folder, "ring.html"), { scripts: true });
   expectAlike(await pageValues(page), await headless([]));
   const outcome = await page.evaluate(() =>
     (globalThis as unknown as { hornbook: { study: { set(name: string, text: string): unknown } } }).hornbook.study.set(
@@ -127,11 +75,11 @@ test("export: givens that were set are the page's givens; the address of a view 
   const folder = await ownFolder();
   await run(["export", smallNotebook, "--set", "outer=2 m", "--set", "remark=<i>&\"'</i> </script>"], { cwd: folder });
   const path = join(folder, "small.html");
-  const asExported = await openFile(path, { scripts: true });
+  const asExported = await openFile(browser, path, { scripts: true });
   expect((await pageValues(asExported.page)).givens).toMatchObject({ outer: 2, remark: "<i>&\"'</i> </script>" });
   expect(asExported.complaints).toEqual([]);
   await asExported.close();
-  const viewed = await openFile(path, { scripts: true }, "#inner=0.5%20m");
+  const viewed = await openFile(browser, path, { scripts: true }, "#inner=0.5%20m");
   expect((await pageValues(viewed.page)).givens).toMatchObject({ outer: 1.2, inner: 0.5 });
   await viewed.close();
 });
@@ -144,7 +92,7 @@ test("export: a still file has no script at all and reads the same", async () =>
   const html = await readFile(join(folder, "still.html"), "utf8");
   expect(html).not.toMatch(/<script|javascript:|\son[a-z]+=/i);
   expect(html).toContain("script-src 'none'");
-  const { page, complaints, close } = await openFile(join(folder, "still.html"), { scripts: true });
+  const { page, complaints, close } = await openFile(browser, join(folder, "still.html"), { scripts: true });
   expect(await shownText(page)).toContain("Deburr the edges");
   expect(await page.locator("input, button, select").count()).toBe(0);
   expect(complaints).toEqual([]);
@@ -195,7 +143,7 @@ export const cells = table({ title: words, columns: [words], rows: [{ label: wor
   for (const still of [[], ["--still"]]) {
     const { code } = await run(["export", path, ...still], { cwd: folder });
     expect(code).toBe(0);
-    const { page, complaints, close } = await openFile(join(folder, "attack.html"), { scripts: true });
+    const { page, complaints, close } = await openFile(browser, join(folder, "attack.html"), { scripts: true });
     if (still.length === 0) expect((await pageValues(page)).givens.words).toBe(attack);
     expect(await page.evaluate(() => (globalThis as { ran?: number }).ran)).toBeUndefined();
     expect(await page.locator("img, a[href^='javascript']").count()).toBe(0);
@@ -210,7 +158,7 @@ test("export: a failed cell is told, the rest is written, exit 1", async () => {
   const { code, err } = await run(["export", smallNotebook, "--set", "inner=1.5 m"], { cwd: folder });
   expect(code).toBe(1);
   expect(err).toContain("area failed: ringArea: inner must be below outer (1.2 m); got 1.5 m");
-  const { page, close } = await openFile(join(folder, "small.html"), { scripts: false });
+  const { page, close } = await openFile(browser, join(folder, "small.html"), { scripts: false });
   const text = await shownText(page);
   expect(text).toContain("ringArea: inner must be below outer");
   expect(text).toContain("Deburr the edges");

@@ -4,7 +4,7 @@ import { type HybridMode, hybridMode } from "../../guide/hybrid.ts";
 import { hybridField } from "../../guide/hybrid-field.ts";
 import type { FeedPattern } from "../../pattern/feed-pattern.ts";
 import { hybridModePattern } from "../../radiation/hybrid-pattern.ts";
-import type { Flare } from "../flare.ts";
+import { capSlant, type Flare } from "../flare.ts";
 import type { MouthTerm } from "../mouth-field.ts";
 import { type CorrugatedGeometry, type Corrugation, wallAt } from "./geometry.ts";
 
@@ -18,7 +18,7 @@ export function he11Pattern(
   frequency: number,
   thetaCount: number,
 ): FeedPattern {
-  return hybridModePattern(he11At(mouth, frequency), { flareSlant: mouth.flare.slant, thetaCount });
+  return hybridModePattern(he11At(mouth, frequency), { flareSlant: capSlant(mouth.flare), thetaCount });
 }
 
 /** @throws {RangeError} HE11 doesn't travel on this wall at this frequency */

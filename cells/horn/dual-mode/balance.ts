@@ -3,7 +3,7 @@
 import type { Complex } from "../../math/complex.ts";
 import { patternInterpolant } from "../../pattern/interpolant.ts";
 import { aperturePattern } from "../../radiation/aperture-pattern.ts";
-import type { Flare } from "../flare.ts";
+import { capSlant, type Flare } from "../flare.ts";
 import { coarseThetaCountFor } from "../kind.ts";
 import { te11Pattern } from "../smooth/model.ts";
 
@@ -29,7 +29,7 @@ export function balancedMouth(flare: Flare, frequency: number, halfAngle: number
   const te = patternInterpolant(te11Pattern(flare, frequency, thetaCount));
   const amplitudes = { re: Float64Array.of(1, 1), im: new Float64Array(2) };
   const modes = { frequency, radius: flare.radius, modePairs: 1, amplitudes, warnings: [] };
-  const both = patternInterpolant(aperturePattern(modes, { flareSlant: flare.slant, thetaCount }));
+  const both = patternInterpolant(aperturePattern(modes, { flareSlant: capSlant(flare), thetaCount }));
   const [e, h, axis] = [te.ePlane(halfAngle), te.hPlane(halfAngle), te.copolar45(0)];
   const eTm = difference(both.ePlane(halfAngle), e);
   const hTm = difference(both.hPlane(halfAngle), h);

@@ -5,7 +5,7 @@ import { integrate } from "../../math/quadrature.ts";
 import type { FeedPattern } from "../../pattern/feed-pattern.ts";
 import type { ApertureModes } from "../../radiation/aperture-modes.ts";
 import { aperturePattern } from "../../radiation/aperture-pattern.ts";
-import { radiusAt } from "../flare.ts";
+import { capSlant, radiusAt } from "../flare.ts";
 import type { MouthTerm } from "../mouth-field.ts";
 import type { DualModeGeometry } from "./geometry.ts";
 import { stepCoupling, stepLaunch } from "./step.ts";
@@ -48,7 +48,7 @@ export function dualModeAperture(geometry: DualModeGeometry, frequency: number):
 
 export function dualModePattern(geometry: DualModeGeometry, frequency: number, thetaCount: number): FeedPattern {
   const modes = dualModeAperture(geometry, frequency);
-  return aperturePattern(modes, { flareSlant: geometry.flare.slant, thetaCount });
+  return aperturePattern(modes, { flareSlant: capSlant(geometry.flare), thetaCount });
 }
 
 /** TE11 and TM11 at the mouth. A TM11 cut off there carries no power; its share is then 0. */

@@ -4,7 +4,7 @@ import { modeField, TE11, wallLoss, waveImpedance } from "../../guide/mode.ts";
 import { integrate } from "../../math/quadrature.ts";
 import type { FeedPattern } from "../../pattern/feed-pattern.ts";
 import { aperturePattern } from "../../radiation/aperture-pattern.ts";
-import { type Flare, radiusAt } from "../flare.ts";
+import { capSlant, type Flare, radiusAt } from "../flare.ts";
 import type { MouthTerm } from "../mouth-field.ts";
 import type { SmoothGeometry } from "./geometry.ts";
 
@@ -13,7 +13,7 @@ export function te11Pattern(flare: Flare, frequency: number, thetaCount: number)
   const amplitudes = { re: Float64Array.of(1, 0), im: new Float64Array(2) };
   return aperturePattern(
     { frequency, radius: flare.radius, modePairs: 1, amplitudes, warnings: [] },
-    { flareSlant: flare.slant, thetaCount },
+    { flareSlant: capSlant(flare), thetaCount },
   );
 }
 

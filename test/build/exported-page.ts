@@ -1,0 +1,66 @@
+// An exported file in a real browser: opened from file:// with the network off, watched for whatever it shouldn't say or ask.
+
+import { pathToFileURL } from "node:url";
+import type { Browser, Page } from "playwright-core";
+import { expect } from "vitest";
+import { assertClose } from "../assert-close.ts";
+
+/** What a page said that it shouldn't: errors, refusals of its policy, requests to anywhere. */
+export interface Watched {
+  page: Page;
+  complaints: string[];
+  close(): Promise<void>;
+}
+
+export async function openFile(
+  browser: Browser,
+  path: string,
+  { scripts, width = 1280 }: { scripts: boolean; width?: number },
+  fragment = "",
+): Promise<Watched> {
+  const context = await browser.newContext({
+    javaScriptEnabled: scripts,
+    offline: true,
+    viewport: { width, height: 900 },
+  });
+  const page = await context.newPage();
+  const complaints: string[] = [];
+  page.on("pageerror", (error) => complaints.push(`error: ${error.message}`));
+  page.on("console", (message) => {
+    if (["error", "warning"].includes(message.type())) complaints.push(`console: ${message.text()}`);
+  });
+  page.on("request", (request) => {
+    if (!/^(file|blob|data):/.test(request.url())) complaints.push(`request: ${request.url()}`);
+  });
+  await page.goto(pathToFileURL(path).href + fragment);
+  return { page, complaints, close: () => context.close() };
+}
+
+export interface Values {
+  givens: Record<string, unknown>;
+  cells: Record<string, unknown>;
+  failed: unknown[];
+}
+
+export const pageValues = (page: Page): Promise<Values> =>
+  page.evaluate(async () => {
+    const handle = () => (globalThis as unknown as { hornbook?: { values(): Promise<never> } }).hornbook;
+    while (!handle()) await new Promise((resolve) => setTimeout(resolve, 10));
+    return handle()!.values();
+  });
+
+/** All numbers of two values are alike to 1e-12, everything else is equal. */
+export function expectAlike(actual: unknown, expected: unknown, path = "values"): void {
+  if (typeof expected === "number") {
+    assertClose(actual as number, expected, {
+      rel: 1e-12,
+      abs: 1e-300,
+      because: `${path}: same source, another engine`,
+    });
+  } else if (typeof expected === "object" && expected !== null) {
+    expect(Object.keys(actual as object), path).toEqual(Object.keys(expected));
+    for (const [name, part] of Object.entries(expected)) {
+      expectAlike((actual as Record<string, unknown>)[name], part, `${path}.${name}`);
+    }
+  } else expect(actual, path).toEqual(expected);
+}
