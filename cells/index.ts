@@ -19,6 +19,16 @@ export {
   slowWaveLimit,
 } from "./guide/slot.ts";
 // Horn: one folder a kind. First dimensions for what a dish asks, or the reason why there are none; pattern, modes at the mouth, loss.
+export {
+  type BreakdownMargin,
+  breakdownField,
+  breakdownMargin,
+  type PoweredGuide,
+  seaLevelBreakdownField,
+  te10BreakdownPower,
+  te11PeakField,
+  usualMarginDb,
+} from "./horn/air-breakdown.ts";
 export * from "./horn/index.ts";
 
 // Pattern: the one form in which every feed hands its far field on, and what can be read from it.
@@ -36,9 +46,25 @@ export { hybridModePattern, hybridPattern } from "./radiation/hybrid-pattern.ts"
 // Reflector: the dish, what it asks of a feed, what it makes of one.
 export * from "./reflector/dish.ts";
 export * from "./reflector/efficiency.ts";
+export {
+  densityOnAxis,
+  type ExposureDistance,
+  exposureDistances,
+  type NearFieldEstimate,
+  nearFieldEstimate,
+  type Transmitter,
+} from "./reflector/exposure.ts";
+export { type ExposureLimit, exposureLimits } from "./reflector/exposure-limits.ts";
 export { phaseCenterOverDish } from "./reflector/feed-position.ts";
 export * from "./reflector/losses.ts";
 export * from "./reflector/requirement.ts";
+export {
+  type DishSurface,
+  type SunFocus,
+  type SunGivens,
+  specularReflectance,
+  sunFocus,
+} from "./reflector/sun-focus.ts";
 // Trade: every candidate over the band, side by side, judged.
 export * from "./trade/over-band.ts";
 export * from "./trade/trade-table.ts";
