@@ -3,6 +3,7 @@
 
 import { createHash } from "node:crypto";
 import { type ExportRecord, recordElement } from "./export-record.ts";
+import { packedScript } from "./packed-script.ts";
 
 export interface ExportParts {
   /** plain text */
@@ -22,15 +23,7 @@ const hashSource = (text: string): string => `'sha256-${createHash("sha256").upd
 const escapeText = (text: string): string =>
   text.replaceAll("&", "&amp;").replaceAll("<", "&lt;").replaceAll(">", "&gt;");
 
-/**
- * Script text that can stand in an HTML script element: nothing in it ends the element or begins a comment. Both sequences can
- * only be inside strings, templates and regular expressions there, where the escapes mean the same.
- */
-export function scriptText(code: string): string {
-  return code.replace(/<\/(script)/gi, "<\\/$1").replaceAll("<!--", "\\x3C!--");
-}
-
-/** Style text likewise; a style sheet has no use for the sequence but in a string, where the escape means the same. */
+/** Style text that can stand in a style element: its end tag can only be inside a string, where the escape means the same. */
 export function styleText(style: string): string {
   return style.replace(/<\/(style)/gi, "<\\/$1");
 }
@@ -49,10 +42,10 @@ const unescapeAttribute = (text: string): string =>
 /** The whole file. */
 export function exportHtml({ title, firstPaint, style, script, record, notices }: ExportParts): string {
   const css = styleText(style);
-  const live = script === undefined ? undefined : scriptText(script);
+  const live = script === undefined ? undefined : packedScript(script);
   const policy = [
     "default-src 'none'",
-    live === undefined ? "script-src 'none'" : `script-src ${hashSource(live)}`,
+    live === undefined ? "script-src 'none'" : `script-src ${live.texts.map(hashSource).join(" ")}`,
     ["style-src", hashSource(css), ...stylesWithin(firstPaint)].join(" "),
     "img-src data: blob:",
     live === undefined ? "worker-src 'none'" : "worker-src blob:",
@@ -75,7 +68,7 @@ export function exportHtml({ title, firstPaint, style, script, record, notices }
     `<div id="study">${firstPaint}</div>`,
     recordElement(record, { still: live === undefined }),
     ...(notices.length === 0 ? [] : [`<!-- The script holds: ${notices.join("; ").replaceAll("--", "- -")} -->`]),
-    ...(live === undefined ? [] : [`<script id="hornbook-live">${live}</script>`]),
+    ...(live === undefined ? [] : [live.html]),
     "</body>",
     "</html>",
     "",
