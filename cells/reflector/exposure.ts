@@ -2,7 +2,7 @@
 
 import { requireNumber, requirePositive } from "../check.ts";
 import { speedOfLight } from "../constants.ts";
-import { dbToPower } from "../units.ts";
+import { dbToPower, powerToDb } from "../units.ts";
 import { type ExposureLimit, exposureLimits } from "./exposure-limits.ts";
 
 /** A round aperture that transmits: a dish, or the horn itself with its mouth open. */
@@ -19,7 +19,7 @@ export interface Transmitter {
 
 /** Estimates of power density, W/m², and the distances (m, on the axis) between which each of them holds. */
 export interface NearFieldEstimate {
-  /** λ²G/4π over the area of the aperture */
+  /** λ²G/4π over the area of the aperture; above 1 for a mouth of less than a wavelength or two */
   apertureEfficiency: number;
   /** P/A: the mean over the aperture if all the power passes through it */
   meanDensity: number;
@@ -39,20 +39,24 @@ export interface NearFieldEstimate {
  * Density in front of a round aperture: 4P/A at its surface, 16ηP/(πD²) on the axis as far as D²/(4λ), and the two distances
  * between which it falls first as 1/R, then as 1/R².
  *
- * An estimate meant to err toward too much on the axis, for apertures of many wavelengths with the usual taper. It leaves out
+ * An estimate meant to err toward too much on the axis, for apertures of many wavelengths with the usual taper
+ * (a horn's mouth is small: there it is rougher). It leaves out
  * what the ground or a wall reflects, spillover beside the dish, and leaks: these ask for a measurement.
  *
- * @throws {RangeError} an argument not positive; a gain above that of an evenly lit aperture of this diameter
- * @source FCC OET Bulletin 65, edition 97-01, eq. 11–18; a hundredth beside the beam: the text after them (from memory)
+ * @throws {RangeError} an argument not positive; a gain above the normal gain of this size, (ka)² + 2ka
+ * @source FCC OET Bulletin 65, edition 97-01, eq. 11–18; a hundredth beside the beam: the text after them (from memory);
+ *   normal gain: Harrington, J. Res. NBS 64D, 1960 (from memory)
  */
 export function nearFieldEstimate(transmitter: Transmitter): NearFieldEstimate {
   const { frequency, diameter, power, gainDbi } = checked("nearFieldEstimate", transmitter);
   const wavelength = speedOfLight / frequency;
   const area = (Math.PI * diameter ** 2) / 4;
   const apertureEfficiency = (dbToPower(gainDbi) * wavelength ** 2) / (4 * Math.PI) / area;
-  if (apertureEfficiency > 1 + 1e-9)
+  const size = (Math.PI * diameter) / wavelength;
+  const normalGainDbi = powerToDb(size ** 2 + 2 * size);
+  if (gainDbi > normalGainDbi)
     throw new RangeError(
-      `nearFieldEstimate: gain must be at most that of an evenly lit aperture, ${(gainDbi - 10 * Math.log10(apertureEfficiency)).toFixed(2)} dBi for ${diameter} m; got ${gainDbi} dBi`,
+      `nearFieldEstimate: gain must be at most the normal gain of an aperture of ${diameter} m, ${normalGainDbi.toFixed(2)} dBi; got ${gainDbi} dBi`,
     );
   const nearFieldDensity = (16 * apertureEfficiency * power) / (Math.PI * diameter ** 2);
   return {
