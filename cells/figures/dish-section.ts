@@ -1,11 +1,11 @@
 // The dish in section: where its rim stands as the feed sees it, and how small the feed is beside it.
 
 import { requireNumber } from "../check.ts";
-import { outerWall } from "../horn/workshop/metal.ts";
+import { outerWall, wallThickness } from "../horn/workshop/metal.ts";
 import type { Dish } from "../reflector/dish.ts";
 import { toDeg, toMm } from "../units.ts";
 import type { Drawing } from "./drawing.ts";
-import { type SectionedHorn, wallThickness } from "./horn-section.ts";
+import type { SectionedHorn } from "./horn-section.ts";
 import { chainLine, dimension } from "./kit/dimension.ts";
 import { facts, factsHeight } from "./kit/facts.ts";
 import { control, ink, paper, secondary, tint } from "./kit/palette.ts";

@@ -1,7 +1,7 @@
 // One horn in section, mouth up: cut metal, axis, dimensions, what is special about its wall.
 
 import type { RealizableHorn } from "../horn/candidate.ts";
-import { largestInnerRadius, outerWall, wallFeatures } from "../horn/workshop/metal.ts";
+import { outerWall, wallFeatures, wallThickness } from "../horn/workshop/metal.ts";
 import { toMm } from "../units.ts";
 import { chainLine, dimension } from "./kit/dimension.ts";
 import { hatchPath } from "./kit/hatch.ts";
@@ -28,11 +28,6 @@ interface WallNote {
 const noteSize = textSize.small + 0.5;
 const noteLeading = 16;
 const noteGap = 10;
-
-/** Thickness of the wall, m, as `outerDiameter` leaves it at the widest place. */
-export function wallThickness({ profile, outerDiameter }: SectionedHorn): number {
-  return outerDiameter / 2 - largestInnerRadius(profile);
-}
 
 /** What is written beside the wall: diameter steps with the straight that follows, slots at the mouth and at the throat. */
 export function wallNotes({ profile }: SectionedHorn): WallNote[] {

@@ -2,9 +2,10 @@
 
 import { requireNumber } from "../check.ts";
 import type { Candidate, RealizableHorn } from "../horn/candidate.ts";
+import { wallThickness } from "../horn/workshop/metal.ts";
 import { toMm } from "../units.ts";
 import type { Drawing } from "./drawing.ts";
-import { hornSection, sideRoom, wallNotes, wallThickness } from "./horn-section.ts";
+import { hornSection, sideRoom, wallNotes } from "./horn-section.ts";
 import { roundStep } from "./kit/axis.ts";
 import { ink, kindStyle, secondary, textSize } from "./kit/palette.ts";
 import { drawingRoot, type Pen, svgPen, text, textBlock } from "./kit/svg.ts";

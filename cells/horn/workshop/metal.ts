@@ -2,7 +2,8 @@
 
 import type { HornProfile } from "../horn-profile.ts";
 
-type ZR = readonly [z: number, radius: number];
+/** A point of a wall, m. */
+export type ZR = readonly [z: number, radius: number];
 
 /** An abrupt change of diameter that is no slot. */
 export interface DiameterStep {
@@ -30,7 +31,7 @@ export interface WallFeatures {
  * @throws {RangeError} fewer than two points, lengths that differ, z falling, a radius not positive
  */
 export function wallFeatures(profile: HornProfile): WallFeatures {
-  const points = pointsOf(profile);
+  const points = wallPoints(profile);
   const jumps: { z: number; from: number; to: number }[] = [];
   for (let i = 1; i < points.length; i++) {
     const [z0, from] = points[i - 1]!;
@@ -55,8 +56,8 @@ export function wallFeatures(profile: HornProfile): WallFeatures {
 /** Two points nearer than this along the axis are taken as one z, m: far below any tolerance, far above rounding. */
 const abrupt = 1e-9;
 
-/** Points without repetitions, steps at exactly one z. */
-function pointsOf({ z, radius }: HornProfile): ZR[] {
+/** Points without repetitions, steps at exactly one z. @throws {RangeError} as `wallFeatures` */
+export function wallPoints({ z, radius }: HornProfile): ZR[] {
   if (z.length !== radius.length || z.length < 2)
     throw new RangeError(
       `horn profile: must have as many z as radii, at least two; got ${z.length} and ${radius.length}`,
@@ -107,7 +108,7 @@ function clearance(points: ZR[], slots: RingSlot[]): ZR[] {
  * @returns points from the throat plane to the mouth plane
  */
 export function outerWall(profile: HornProfile, wall: number): ZR[] {
-  const covered = clearance(pointsOf(profile), wallFeatures(profile).slots);
+  const covered = clearance(wallPoints(profile), wallFeatures(profile).slots);
   const start = covered[0]![0];
   const moved: [number, number][] = [];
   covered.forEach(([z, r], i) => {
@@ -134,4 +135,9 @@ export function outerWall(profile: HornProfile, wall: number): ZR[] {
 /** Largest radius that the outer wall has to clear, m. */
 export function largestInnerRadius({ radius }: HornProfile): number {
   return radius.reduce((largest, r) => Math.max(largest, r), 0);
+}
+
+/** Thickness of the wall, m, as `outerDiameter` leaves it at the widest place. */
+export function wallThickness({ profile, outerDiameter }: { profile: HornProfile; outerDiameter: number }): number {
+  return outerDiameter / 2 - largestInnerRadius(profile);
 }
