@@ -30,8 +30,8 @@ export function cubicSpline(x: ArrayLike<number>, y: ArrayLike<number>, ends: Sp
       throw new RangeError(`cubicSpline: x must ascend; got ${x[i - 1]} then ${x[i]} at point ${i}`);
     }
   }
-  const xs = Float64Array.from(x);
-  const ys = Float64Array.from(y);
+  const xs = new Float64Array(x);
+  const ys = new Float64Array(y);
   const slopes = ends === "natural" ? naturalSlopes(xs, ys) : notAKnotSlopes(xs, ys);
 
   const pieceOf = (at: number): number => {
@@ -68,8 +68,13 @@ export function cubicSpline(x: ArrayLike<number>, y: ArrayLike<number>, ends: Sp
 /** Inner rows: h_i s_{i−1} + 2(h_{i−1}+h_i) s_i + h_{i−1} s_{i+1} = 3(h_i d_{i−1} + h_{i−1} d_i), d the chord slopes. */
 function innerRows(x: Float64Array, y: Float64Array) {
   const n = x.length;
-  const h = Float64Array.from({ length: n - 1 }, (_, i) => x[i + 1]! - x[i]!);
-  const d = Float64Array.from({ length: n - 1 }, (_, i) => (y[i + 1]! - y[i]!) / h[i]!);
+  // plain loops: Float64Array.from with a function takes longer than the whole solution
+  const h = new Float64Array(n - 1);
+  const d = new Float64Array(n - 1);
+  for (let i = 0; i < n - 1; i++) {
+    h[i] = x[i + 1]! - x[i]!;
+    d[i] = (y[i + 1]! - y[i]!) / h[i]!;
+  }
   const below = new Float64Array(n);
   const main = new Float64Array(n);
   const above = new Float64Array(n);

@@ -52,10 +52,12 @@ export const pageValues = (page: Page): Promise<Values> =>
 /** All numbers of two values are alike to 1e-12, everything else is equal. */
 export function expectAlike(actual: unknown, expected: unknown, path = "values"): void {
   if (typeof expected === "number") {
+    // a drawing's level in a null: 1e-16 of the field is more than 1e-12 of a level below −100 dB
+    const inNull = expected < -100 && /\.drawing\.data\./.test(path);
     assertClose(actual as number, expected, {
       rel: 1e-12,
       // what is left of two equal lengths, or the logarithm of nearly one, is rounding in either engine
-      abs: 1e-13,
+      abs: inNull ? 1e-3 : 1e-13,
       because: `${path}: same source, another engine`,
     });
   } else if (typeof expected === "object" && expected !== null) {
