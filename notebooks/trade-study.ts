@@ -11,6 +11,7 @@ import {
   performanceSteps,
   sampledField,
   sumOfFields,
+  tradeSentences,
   tradeSheet,
 } from "../cells/figures/index.ts";
 import {
@@ -147,31 +148,7 @@ head({
   ],
 });
 
-const passing = trade.rows.filter(({ verdict }) => verdict === "passes" || verdict === "barely");
-const best = passing.reduce(
-  (found, row) => (row.feasible && (!found?.feasible || row.worst.gainDbi > found.worst.gainDbi) ? row : found),
-  passing[0],
-);
-const refused = trade.rows.filter(({ feasible }) => !feasible);
-lead`${
-  best?.feasible
-    ? `The ${kindNames[best.kind].toLowerCase()} passes every limit with the most gain,
-${show(best.worst.gainDbi, "dBi", 2)} at its worst in the band, and ${passing.length === 1 ? "is the only one that does" : `is one of ${passing.length} that do`}.`
-    : "No candidate passes every limit."
-} ${trade.rows
-  .flatMap((row) =>
-    row.verdict === "misses"
-      ? [
-          `The ${kindNames[row.kind].toLowerCase()} ${row.verdicts
-            .filter(({ verdict }) => verdict === "misses")
-            .map(({ label, words }) => `${words} in ${label}`)
-            .join(" and ")}.`,
-        ]
-      : [],
-  )
-  .join(
-    " ",
-  )} ${refused.map(({ kind }) => `A ${kindNames[kind].toLowerCase()} can't be realised for this dish.`).join(" ")}`;
+lead`${tradeSentences(trade)}`;
 
 note`## What the dish asks of the feed
 

@@ -19,4 +19,5 @@ export { type DrawnHorn, hornsToScale } from "./horns-to-scale.ts";
 export { type PatternDifference, patternDifference } from "./kit/pattern-difference.ts";
 export { type LossEntry, type LossGap, type LossStep, lossSteps, performanceSteps } from "./loss-steps.ts";
 export { type CutEntry, type CutGap, type PatternCutsOptions, patternCuts } from "./pattern-cuts.ts";
-export { kindNames, type TradeSheet, tradeSheet } from "./trade-sheet.ts";
+export { type TradeSheet, tradeSheet } from "./trade-sheet.ts";
+export { bestRow, kindNames, kindNouns, tradeSentences } from "./trade-words.ts";

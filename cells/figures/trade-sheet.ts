@@ -5,6 +5,7 @@ import type { Trade, TradeFigures, TradeRow } from "../trade/trade-table.ts";
 import type { Verdict, VerdictWord } from "../trade/verdict.ts";
 import { toMm } from "../units.ts";
 import { decimal } from "./kit/words.ts";
+import { kindNames } from "./trade-words.ts";
 
 /** Rows of a table as plain data: what the page's `table` takes. */
 export interface TradeSheet {
@@ -20,24 +21,14 @@ export interface TradeSheet {
   data: (string | number)[][];
 }
 
-/** Names of the kinds as headings write them. */
-export const kindNames: Record<FeedKind, string> = {
-  smooth: "Smooth cone",
-  dualMode: "Dual-mode",
-  corrugated: "Corrugated",
-  chokeRing: "Choke ring",
-  measured: "Measured",
-  custom: "Own profile",
-};
-
 interface Line {
   field: keyof TradeFigures;
   label: string;
   unit: string;
   /** value as shown, without its unit */
   shown: (value: number) => string;
-  /** the value doesn't change over the band */
-  fixed?: true;
+  /** the word for its worst over the band, default "worst"; none: it doesn't change over the band */
+  over?: "worst" | "up to" | "none";
 }
 
 const percentage = (value: number): string => decimal(100 * value, 1);
@@ -50,23 +41,23 @@ const noCrossPolarDb = -60;
 const lines: readonly Line[] = [
   { field: "gainDbi", label: "Gain", unit: "dBi", shown: (value) => decimal(value, 2) },
   { field: "totalEfficiency", label: "Efficiency, all losses", unit: "%", shown: percentage },
-  { field: "apertureEfficiency", label: "Aperture efficiency", unit: "%", shown: percentage },
-  { field: "spilloverEfficiency", label: "of which spillover", unit: "%", shown: percentage },
-  { field: "illuminationEfficiency", label: "illumination", unit: "%", shown: percentage },
-  { field: "phaseEfficiency", label: "phase", unit: "%", shown: (value) => decimal(100 * value, 2) },
-  { field: "polarizationEfficiency", label: "polarisation", unit: "%", shown: (value) => decimal(100 * value, 2) },
+  { field: "apertureEfficiency", label: "Aperture efficiency", unit: "%, product of the next four", shown: percentage },
+  { field: "spilloverEfficiency", label: "Spillover", unit: "%", shown: percentage },
+  { field: "illuminationEfficiency", label: "Illumination", unit: "%", shown: percentage },
+  { field: "phaseEfficiency", label: "Phase", unit: "%", shown: (value) => decimal(100 * value, 2) },
+  { field: "polarizationEfficiency", label: "Polarisation", unit: "%", shown: (value) => decimal(100 * value, 2) },
   {
     field: "crossPolarPeakDb",
     label: "Highest cross-polar",
     unit: "dB",
     shown: (value) => (value < noCrossPolarDb ? `below ${decimal(noCrossPolarDb, 0)}` : decimal(value, 1)),
   },
-  { field: "edgeTaperDb", label: "Edge taper, space loss included", unit: "dB", shown: oneDecimal },
-  { field: "halfPowerBeamwidthDeg", label: "Half-power beamwidth", unit: "deg", shown: oneDecimal },
-  { field: "phaseCenterM", label: "Phase centre from the mouth", unit: "mm, − inside", shown: inMm },
-  { field: "lengthM", label: "Length", unit: "mm", shown: inMm, fixed: true },
-  { field: "apertureDiameterM", label: "Mouth, inner diameter", unit: "mm", shown: inMm, fixed: true },
-  { field: "outerDiameterM", label: "Outside diameter", unit: "mm", shown: inMm, fixed: true },
+  { field: "edgeTaperDb", label: "Edge taper, space loss included", unit: "dB", shown: oneDecimal, over: "up to" },
+  { field: "halfPowerBeamwidthDeg", label: "Half-power beamwidth", unit: "deg", shown: oneDecimal, over: "up to" },
+  { field: "phaseCenterM", label: "Phase centre from the mouth", unit: "mm, − inside", shown: inMm, over: "up to" },
+  { field: "lengthM", label: "Length", unit: "mm", shown: inMm, over: "none" },
+  { field: "apertureDiameterM", label: "Mouth, inner diameter", unit: "mm", shown: inMm, over: "none" },
+  { field: "outerDiameterM", label: "Outside diameter", unit: "mm", shown: inMm, over: "none" },
 ];
 
 type SweptRow = Extract<TradeRow, { feasible: true }>;
@@ -89,7 +80,10 @@ export function tradeSheet(trade: Trade): TradeSheet {
   return { columns: swept.map(({ kind }) => ({ label: kindNames[kind], kind })), rows, data: numbersOf(trade) };
 }
 
-function lineOf({ field, label, unit, shown, fixed }: Line, swept: readonly SweptRow[]): TradeSheet["rows"][number] {
+function lineOf(
+  { field, label, unit, shown, over = "worst" }: Line,
+  swept: readonly SweptRow[],
+): TradeSheet["rows"][number] {
   const limit = swept.flatMap(({ verdicts }) => verdicts).find((verdict) => verdict.field === field);
   return {
     key: field,
@@ -98,7 +92,7 @@ function lineOf({ field, label, unit, shown, fixed }: Line, swept: readonly Swep
     cells: swept.map((row) => {
       const worst = shown(row.worst[field]);
       const judged = row.verdicts.find((verdict) => verdict.field === field);
-      const words = [...(fixed ? [] : [`worst ${worst}`]), ...(judged ? [judged.words] : [])].join(", ");
+      const words = [...(over === "none" ? [] : [`${over} ${worst}`]), ...(judged ? [judged.words] : [])].join(", ");
       return {
         text: shown(row[field]),
         ...(words ? { word: words } : {}),
