@@ -1,15 +1,6 @@
-// The inner wall of a horn, as one polyline: what a workshop turns and what the models analyse.
+// The kinds of horn, and their inner wall.
+
+export type { HornProfile } from "../guide/horn-profile.ts";
 
 /** The kinds of feed that a study can set side by side. */
 export type FeedKind = "smooth" | "dualMode" | "corrugated" | "chokeRing" | "measured" | "custom";
-
-/**
- * Inner wall of a body of revolution as a polyline from the throat to the mouth.
- * z never decreases; two points at one z are an abrupt step (a slot wall, a diameter step). The mouth is at z = 0.
- */
-export interface HornProfile {
-  /** m, [pointCount], last is 0 */
-  z: number[];
-  /** m, [pointCount], all positive */
-  radius: number[];
-}

@@ -1,0 +1,12 @@
+// The inner wall of a horn, as one polyline: what a workshop turns and what the models analyse.
+
+/**
+ * Inner wall of a body of revolution as a polyline from the throat to the mouth.
+ * z never decreases; two points at one z are an abrupt step (a slot wall, a diameter step). The mouth is at z = 0.
+ */
+export interface HornProfile {
+  /** m, [pointCount], last is 0 */
+  z: number[];
+  /** m, [pointCount], all positive */
+  radius: number[];
+}
