@@ -97,6 +97,12 @@ test.each([1440, 390])(
     await pageValues(page);
     expect(await serious(page)).toEqual([]);
     expect(await page.evaluate(() => document.documentElement.scrollWidth)).toBeLessThanOrEqual(width);
+    // every drawing was made for the width it stands in
+    const hidden = await page
+      .locator(".drawing")
+      .evaluateAll((boxes) => boxes.map(({ scrollWidth, clientWidth }) => scrollWidth - clientWidth));
+    expect(hidden.length).toBeGreaterThanOrEqual(6);
+    expect(Math.max(...hidden)).toBeLessThanOrEqual(0);
     await close();
   },
 );
