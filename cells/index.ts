@@ -30,6 +30,17 @@ export {
   usualMarginDb,
 } from "./horn/air-breakdown.ts";
 export * from "./horn/index.ts";
+// Workshop: what it takes to build one of them, or an own profile.
+export {
+  type BuildableHorn,
+  type BuildGivens,
+  type BuildSheet,
+  buildSheet,
+  type SheetDimension,
+  type SlotRow,
+} from "./horn/workshop/build-sheet.ts";
+export { type MachiningVerdict, type ShopLimits, usualShop } from "./horn/workshop/machining.ts";
+export { type MetalMass, metals } from "./horn/workshop/mass.ts";
 
 // Pattern: the one form in which every feed hands its far field on, and what can be read from it.
 export * from "./pattern/cuts.ts";

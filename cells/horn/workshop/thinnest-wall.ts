@@ -1,0 +1,46 @@
+// Where the wall between bore and outside is thinnest.
+
+import type { ZR } from "./metal.ts";
+
+/**
+ * Least distance between two walls, m, and where: at a corner of one of them, since both are made of straight runs. Where the
+ * inner wall breaks through the outer one, the distance is negative: as far as it stands out.
+ */
+export function thinnestWall(inner: readonly ZR[], outer: readonly ZR[]): { thickness: number; z: number } {
+  let best = { thickness: Number.POSITIVE_INFINITY, z: 0 };
+  const scan = (corners: readonly ZR[], runs: readonly ZR[]): void => {
+    for (const [z, r] of corners)
+      for (let i = 1; i < runs.length; i++) {
+        // Runs farther along the axis than the best found can't be nearer.
+        if (runs[i]![0] < z - best.thickness || runs[i - 1]![0] > z + best.thickness) continue;
+        const thickness = distance([z, r], runs[i - 1]!, runs[i]!);
+        if (thickness < best.thickness) best = { thickness, z };
+      }
+  };
+  scan(inner, outer);
+  scan(outer, inner);
+  for (const [z, r] of inner) {
+    const metal = radiusOver(outer, z) - r;
+    if (metal < Math.min(0, best.thickness)) best = { thickness: metal, z };
+  }
+  return best;
+}
+
+/** Larger radius of a wall at a plane, m. */
+function radiusOver(wall: readonly ZR[], z: number): number {
+  let largest = 0;
+  for (let i = 1; i < wall.length; i++) {
+    const [z0, r0] = wall[i - 1]!;
+    const [z1, r1] = wall[i]!;
+    if (z < z0 || z > z1) continue;
+    largest = Math.max(largest, z1 === z0 ? Math.max(r0, r1) : r0 + ((r1 - r0) * (z - z0)) / (z1 - z0));
+  }
+  return largest;
+}
+
+function distance([z, r]: ZR, [z0, r0]: ZR, [z1, r1]: ZR): number {
+  const [dz, dr] = [z1 - z0, r1 - r0];
+  const squared = dz * dz + dr * dr;
+  const share = squared === 0 ? 0 : Math.min(1, Math.max(0, ((z - z0) * dz + (r - r0) * dr) / squared));
+  return Math.hypot(z - z0 - share * dz, r - r0 - share * dr);
+}
