@@ -3,9 +3,9 @@
 import { startLocalServer } from "../../runtime/server/local-server.ts";
 import type { Bench, Figures } from "../bench.ts";
 import { bundleOnce, bundleStyle } from "../bundle.ts";
+import { launchBrowser } from "../chromium.ts";
 import { findNotebook } from "../notebook-place.ts";
 import { NOTEBOOK_IMPORT } from "../notebook-plugin.ts";
-import { launchChromium } from "./chromium.ts";
 import type { Turn, TurnHandle } from "./turn-page.ts";
 import { runYardstick } from "./yardstick.ts";
 
@@ -57,7 +57,7 @@ export const bench: Bench = {
 };
 
 async function turnsInBrowser(url: string, say: (text: string) => void): Promise<Turn[]> {
-  const browser = await launchChromium();
+  const browser = await launchBrowser();
   try {
     const page = await browser.newPage({ viewport: { width: 1440, height: 900 } });
     await page.goto(url);
