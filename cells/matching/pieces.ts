@@ -1,0 +1,73 @@
+// A profile read as pieces: straight guides and tapers, with or without an abrupt step between two of them.
+
+import { requirePositive } from "../check.ts";
+import type { HornProfile } from "../guide/horn-profile.ts";
+
+/** A stretch of wall without a step: a guide where both radii are equal, else a taper. m */
+export interface Piece {
+  length: number;
+  startRadius: number;
+  endRadius: number;
+}
+
+/** m: points closer than this along z stand in one plane; far below any tolerance, and far above rounding. */
+export const planeTolerance = 1e-8;
+
+/** m: how far z may fall by rounding. */
+const fallTolerance = 1e-9;
+
+/**
+ * The pieces of a profile, from the throat on; neighbours that continue each other as guides are one. Zero-length pieces
+ * vanish, equal radii are no step.
+ * @throws {TypeError} z or radius missing
+ * @throws {RangeError} fewer than two points, lengths that differ, a radius not positive, z that falls, no length at all
+ */
+export function profilePieces(profile: HornProfile): Piece[] {
+  checkProfile(profile);
+  const { z, radius } = profile;
+  const pieces: Piece[] = [];
+  let from = z[0]!;
+  for (let i = 1; i < z.length; i++) {
+    const length = z[i]! - from;
+    if (length <= planeTolerance) continue;
+    const startRadius = radius[i - 1]!;
+    const endRadius = radius[i]!;
+    from = z[i]!;
+    const before = pieces.at(-1);
+    if (before && isGuide(before) && startRadius === endRadius && before.endRadius === startRadius) {
+      before.length += length;
+    } else {
+      pieces.push({ length, startRadius, endRadius });
+    }
+  }
+  if (pieces.length === 0) {
+    throw new RangeError(
+      `bandAnalysis: the profile must have a length; all its points lie within ${planeTolerance * 1e3} mm`,
+    );
+  }
+  return pieces;
+}
+
+export const isGuide = ({ startRadius, endRadius }: Piece): boolean => startRadius === endRadius;
+
+function checkProfile({ z, radius }: HornProfile): void {
+  if (!Array.isArray(z) || !Array.isArray(radius)) {
+    throw new TypeError("bandAnalysis: profile must have arrays z and radius, in m");
+  }
+  if (z.length < 2 || z.length !== radius.length) {
+    throw new RangeError(
+      `bandAnalysis: profile must have as many z as radii, at least two; got ${z.length} and ${radius.length}`,
+    );
+  }
+  for (let i = 0; i < z.length; i++) {
+    requirePositive(`bandAnalysis: profile radius ${i + 1}`, radius[i], "m");
+    if (!Number.isFinite(z[i])) {
+      throw new RangeError(`bandAnalysis: profile z ${i + 1} must be a finite number of m; got ${z[i]}`);
+    }
+    if (i > 0 && z[i]! < z[i - 1]! - fallTolerance) {
+      throw new RangeError(
+        `bandAnalysis: profile z must not fall from the throat to the mouth; got ${z[i]! * 1e3} mm after ${z[i - 1]! * 1e3} mm at point ${i + 1}`,
+      );
+    }
+  }
+}
