@@ -58,8 +58,14 @@ export async function copySmall(folder: string): Promise<string> {
 export interface Outcome {
   code: number | null;
   out: string;
+  /** standard error without what it said of its progress, which depends on how busy the machine is */
   err: string;
+  /** the lines on its progress */
+  progress: string;
 }
+
+/** A line that says what takes more than a second. */
+const progressLine = /^[^:\n]+: (?:bundling|checking types|drawing|writing|evaluating(?:, .*)?)\n/gm;
 
 export interface RunOptions {
   cwd?: string;
@@ -89,7 +95,14 @@ export function run(args: readonly string[], options: RunOptions = {}): Promise<
       err += part;
     });
     child.on("error", reject);
-    child.on("close", (code) => resolve({ code, out, err }));
+    child.on("close", (code) =>
+      resolve({
+        code,
+        out,
+        err: err.replaceAll(progressLine, ""),
+        progress: (err.match(progressLine) ?? []).join(""),
+      }),
+    );
   });
 }
 
