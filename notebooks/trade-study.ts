@@ -42,6 +42,17 @@ export const fOverD = given("0.8", {
   max: 2,
   step: 0.01,
 });
+export const depthBy = given.choice(["f/D", "half-angle"], {
+  label: "Dish depth taken from",
+  why: "Some makers state the angle to the rim instead.",
+});
+export const rimHalfAngle = given("34.7 deg", {
+  label: "Half-angle to the rim",
+  why: "Read only when the depth is taken from it.",
+  min: "14 deg",
+  max: "87 deg",
+  step: "0.1 deg",
+});
 export const bandLow = given("7.9 GHz", {
   label: "Band, lower edge",
   why: "First channel of the link.",
@@ -113,7 +124,9 @@ export const toothThickness = given("1 mm", {
   step: "0.1 mm",
 });
 
-export const reflector = dish({ diameter: dishDiameter, fOverD });
+export const reflector = dish(
+  depthBy === "f/D" ? { diameter: dishDiameter, fOverD } : { diameter: dishDiameter, halfAngle: rimHalfAngle },
+);
 export const requirement = feedRequirement({ dish: reflector, bandLow, bandHigh, edgeTaperDb: edgeTaper });
 const limits = { maxLength, maxDiameter, toothThickness };
 export const smooth = smoothHorn(requirement, limits);
@@ -137,7 +150,7 @@ head({
   document: "Feed trade study",
   title: "A feed for the Marrow Hill relay",
   facts: [
-    ["Dish", `${show(dishDiameter, "m", 2)}, f/D ${show(fOverD, "", 2)}`],
+    ["Dish", `${show(dishDiameter, "m", 2)}, f/D ${show(reflector.fOverD, "", 2)}`],
     ["Band", `${show(bandLow, "GHz", 3)} to ${show(bandHigh, "GHz", 3)}`],
     ["Candidates", "smooth cone, dual-mode, corrugated"],
     ["Asked", `cross-polar below ${show(crossPolarLimit, "dB", 0)}, efficiency above ${show(efficiencyLimit, "%", 0)}`],
