@@ -10,6 +10,7 @@ import { type MadeExport, makeExport } from "../make-export.ts";
 import { findNotebook } from "../notebook-place.ts";
 import { readSets, SET_HELP } from "../set-givens.ts";
 import { requireWritable, writeWhole } from "../write-export.ts";
+import { tellFailures } from "./failed-cells.ts";
 
 /** kB of 1000 bytes that a mail takes without a second thought. */
 const BUDGET_KB = { live: 700, still: 250 };
@@ -67,11 +68,7 @@ arguments or the file can't be used.
         if (out === "-") process.stdout.write(made.html);
         else await writeWhole(path, out, made.html);
         process.stderr.write(`${out === "-" ? "standard output" : out}: ${sizeWords(made, still)}\n`);
-        const failed = headless.study.cells.filter(({ state }) => state === "failed");
-        for (const { name, failure } of failed) {
-          process.stderr.write(`hornbook: ${name} failed: ${failure?.reason ?? "it has no value"}\n`);
-        }
-        return failed.length > 0 ? EXIT.found : EXIT.ok;
+        return tellFailures(headless.study) > 0 ? EXIT.found : EXIT.ok;
       } finally {
         await headless.close();
       }

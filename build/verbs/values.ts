@@ -10,6 +10,7 @@ import { evaluateHeadless } from "../headless-study.ts";
 import { findNotebook } from "../notebook-place.ts";
 import { readSets, SET_HELP } from "../set-givens.ts";
 import { valuesCsv } from "../values-csv.ts";
+import { tellFailures } from "./failed-cells.ts";
 
 export const verb: Verb = {
   help: `hornbook values <notebook> [--set NAME=VALUE]… [--only A,B] [--csv]
@@ -47,13 +48,11 @@ Exit code: 0 all cells have a value, 1 a cell failed (the others are printed), 2
         if (only)
           values.cells = Object.fromEntries(Object.entries(values.cells).filter(([name]) => only?.includes(name)));
         progress.end();
-        if (args.switch("csv")) {
-          for (const { cell, reason } of values.failed) {
-            if (!only || only.includes(cell)) process.stderr.write(`hornbook: ${cell} failed: ${reason}\n`);
-          }
-          process.stdout.write(valuesCsv(only ? inOrder(values.cells, only) : values.cells));
-        } else process.stdout.write(valuesJson(values));
-        return values.failed.length > 0 ? EXIT.found : EXIT.ok;
+        const failures = tellFailures(study);
+        process.stdout.write(
+          args.switch("csv") ? valuesCsv(only ? inOrder(values.cells, only) : values.cells) : valuesJson(values),
+        );
+        return failures > 0 ? EXIT.found : EXIT.ok;
       } finally {
         await close();
       }

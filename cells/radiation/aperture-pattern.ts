@@ -181,7 +181,7 @@ export function apertureWarnings(at: { frequency: number; radius: number; flareS
   if (2 * at.radius < wavelength) {
     warnings.push({
       code: "outside-validated-range",
-      text: `The aperture is ${((2 * at.radius) / wavelength).toFixed(2)} wavelengths wide; below one wavelength the currents on rim and outer wall shape the pattern as much as the aperture does, and they are left out here.`,
+      text: "The aperture is less than one wavelength wide: the currents on rim and outer wall shape the pattern as much as the aperture does, and they are left out here.",
     });
   }
   const angle = at.flareSlant === Number.POSITIVE_INFINITY ? 0 : Math.asin(at.radius / at.flareSlant);

@@ -266,7 +266,7 @@ describe("doubts and refusals", () => {
     expect(aperturePattern(modesOf([1, 0])).warnings).toEqual([]);
     const small = aperturePattern(modesOf([1, 0], { radius: 12e-3 })).warnings;
     expect(small.map(({ code }) => code)).toEqual(["outside-validated-range"]);
-    expect(small[0]!.text).toMatch(/0\.80 wavelengths wide/);
+    expect(small[0]!.text).toMatch(/less than one wavelength wide/);
     const wide = aperturePattern(modesOf([1, 0]), { flareSlant: 0.05 }).warnings;
     expect(wide[0]!.text).toMatch(/opens by 46\.1° each side/);
   });
