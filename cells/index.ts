@@ -7,6 +7,7 @@ export { ConvergenceError, type Warning, type WarningCode } from "./check.ts";
 export { speedOfLight, vacuumImpedance, vacuumPermeability } from "./constants.ts";
 // Guide: the modes of a smooth circular guide and of a corrugated one.
 export * from "./guide/hybrid.ts";
+export * from "./guide/hybrid-dispersion.ts";
 export { hybridField } from "./guide/hybrid-field.ts";
 export * from "./guide/mode.ts";
 export {

@@ -1,10 +1,11 @@
 // Horns: first dimensions, closed-form pattern and ohmic loss, by kind. The one place that knows which kinds there are.
 
 import { requireNumber, requirePositive } from "../check.ts";
+import type { CorrugatedWall } from "../guide/hybrid.ts";
 import type { FeedPattern } from "../pattern/feed-pattern.ts";
 import type { Candidate, RealizableHorn } from "./candidate.ts";
 import { corrugatedHorn } from "./corrugated/dimension.ts";
-import type { CorrugatedGeometry } from "./corrugated/geometry.ts";
+import { type CorrugatedGeometry, wallAt } from "./corrugated/geometry.ts";
 import { corrugatedAttenuation } from "./corrugated/loss.ts";
 import { corrugatedMouth, corrugatedPattern } from "./corrugated/model.ts";
 import { dualModeHorn } from "./dual-mode/dimension.ts";
@@ -91,6 +92,14 @@ export function closedFormPattern(horn: RealizableHorn, frequency: number): Feed
 export function mouthTerms(horn: RealizableHorn, frequency: number): MouthTerm[] {
   requirePositive("mouthTerms: frequency", frequency, "Hz");
   return kindOf("mouthTerms", horn.kind).mouth(horn.geometry, frequency);
+}
+
+/** The corrugated walls at a horn's first and last slot; null for a horn of another kind. */
+export function corrugatedWalls(horn: RealizableHorn): { throat: CorrugatedWall; mouth: CorrugatedWall } | null {
+  if (horn.kind !== "corrugated") return null;
+  const { corrugations, slotWidth, pitch } = horn.geometry as CorrugatedGeometry;
+  const wall = (at: number): CorrugatedWall => wallAt(corrugations.at(at)!, slotWidth / pitch);
+  return { throat: wall(0), mouth: wall(-1) };
 }
 
 /**
