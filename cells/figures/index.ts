@@ -10,6 +10,8 @@ export {
   bandCurves,
   standardQuantities,
 } from "./band-curves.ts";
+export { buildDrawing } from "./build-drawing.ts";
+export { type BuildTables, buildTables, type SheetTable } from "./build-tables.ts";
 export { type ComparedPattern, type ComparisonOptions, comparison } from "./comparison.ts";
 export { type DishSectionOptions, dishSection } from "./dish-section.ts";
 export { type DispersionCurve, type DispersionOptions, dispersion } from "./dispersion.ts";

@@ -81,3 +81,11 @@ function lastAt(points: readonly ZR[], i: number): number {
 function offLine(from: ZR, [z, radius]: ZR, to: ZR): number {
   return radius - from[1] - ((to[1] - from[1]) * (z - from[0])) / (to[0] - from[0]);
 }
+
+/** More stations than these are a curve: its points stand in the drawing's file and numbers, not among the dimensions. */
+const mostStations = 8;
+
+/** Those that a drawing dimensions: all, or of a curve the ends and steps. */
+export function listedStations(found: readonly Station[]): readonly Station[] {
+  return found.length <= mostStations ? found : found.filter(({ name }) => name !== "corner").slice(-mostStations);
+}

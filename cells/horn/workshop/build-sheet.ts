@@ -4,7 +4,7 @@ import { requirePositive, type Warning } from "../../check.ts";
 import { speedOfLight } from "../../constants.ts";
 import { toMm } from "../../units.ts";
 import type { FeedKind, HornProfile } from "../horn-profile.ts";
-import { type Station, stations } from "./bore.ts";
+import { listedStations, type Station, stations } from "./bore.ts";
 import { type MachiningVerdict, machiningVerdicts, type ShopLimits } from "./machining.ts";
 import { type MetalMass, masses, metalVolume } from "./mass.ts";
 import { largestInnerRadius, outerWall, wallFeatures, wallPoints, wallThickness, type ZR } from "./metal.ts";
@@ -71,9 +71,6 @@ export interface BuildSheet {
   warnings: Warning[];
 }
 
-/** More stations than these are a curve: its points stand in the drawing's file and numbers, not among the dimensions. */
-const mostStations = 8;
-
 /**
  * The build sheet of a horn: everything is read from its profile, so any kind will do, an own profile too.
  *
@@ -136,8 +133,7 @@ type ToleranceBy = (what: ToleranceClass, size: number) => Tolerance;
 
 /** From the datum inward: mouth, then each corner and step, then the throat. The bore of a cylinder is given once, at its inner end. */
 function stationDimensions(found: readonly Station[], tolerance: ToleranceBy): SheetDimension[] {
-  const listed =
-    found.length <= mostStations ? found : found.filter(({ name }) => name !== "corner").slice(-mostStations);
+  const listed = listedStations(found);
   const counts = { step: 0, corner: 0, mouth: 0, throat: 0 };
   const total = (name: Station["name"]) => listed.filter((one) => one.name === name).length;
   const dimensions: SheetDimension[] = [];
@@ -177,7 +173,7 @@ function slotDimensions(slots: ReturnType<typeof wallFeatures>["slots"], toleran
 function notesFor(highestFrequency: number, slotted: boolean): string[] {
   const corner = String(Number(toMm(roundedDown(speedOfLight / highestFrequency / 100)).toPrecision(2)));
   return [
-    "Dimensions in mm. Datum: the plane of the mouth, z = 0; z is negative into the horn. Bare metal at 20 °C, before any plating.",
+    "Dimensions in mm, bare metal at 20 °C before plating. Datum: the plane of the mouth, z = 0; negative into the horn.",
     slotted
       ? `Inside corners of slots: radius ${corner} mm at most. Tops of teeth sharp, without burrs.`
       : `Inside corners of steps: radius ${corner} mm at most. Edges of the bore sharp, without burrs.`,

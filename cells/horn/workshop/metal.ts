@@ -85,6 +85,13 @@ function clearance(points: ZR[], slots: RingSlot[]): ZR[] {
   const covered: ZR[] = points.filter(([z]) => z < first.start);
   const before = points.findLast(([z, r]) => z === first.start && r < first.outerRadius);
   if (before) covered.push(before);
+  const ends = new Set(slots.map(({ end }) => end));
+  const starts = new Set(slots.map(({ start }) => start));
+  /** the bottom's corners of a slot: before another point at its end, behind another one at its start */
+  const isSlotCorner = (k: number): boolean => {
+    const z = points[k]![0];
+    return (ends.has(z) && points[k + 1]?.[0] === z) || (starts.has(z) && points[k - 1]?.[0] === z);
+  };
   let joined = false;
   slots.forEach((slot, i) => {
     const nextStart = slots[i + 1]?.start ?? 0;
@@ -95,7 +102,7 @@ function clearance(points: ZR[], slots: RingSlot[]): ZR[] {
     covered.push([(slot.start + slot.end) / 2, slot.outerRadius]);
     if (!joins) {
       covered.push([slot.end, slot.outerRadius]);
-      covered.push(...points.filter(([z, r]) => z >= slot.end && z <= nextStart && r < slot.outerRadius));
+      covered.push(...points.filter(([z], k) => z >= slot.end && z <= nextStart && !isSlotCorner(k)));
     } else if (!slots[i + 1]) covered.push([0, slot.outerRadius]);
     joined = joins;
   });

@@ -4,6 +4,7 @@ import { parseHTML } from "linkedom";
 import {
   apertureFields,
   bandCurves,
+  buildDrawing,
   comparison,
   type Drawing,
   dishSection,
@@ -17,6 +18,7 @@ import {
 import { modeField, TE11, TM11 } from "../../../cells/guide/mode.ts";
 import type { Candidate } from "../../../cells/horn/candidate.ts";
 import type { FeedKind, HornProfile } from "../../../cells/horn/horn-profile.ts";
+import { buildSheet } from "../../../cells/horn/workshop/build-sheet.ts";
 import type { FeedPattern } from "../../../cells/pattern/feed-pattern.ts";
 import { cosineFeed } from "../../../cells/pattern/ideal-feeds.ts";
 import { dish } from "../../../cells/reflector/dish.ts";
@@ -75,6 +77,22 @@ export const reason =
   "The dish is too deep for TM11: the rim at 71.1° asks a mouth of radius 9.8 mm, and TM11 travels there only above 18.7 GHz, beyond the band that ends at 12.75 GHz.";
 export const noHorn: Candidate = { feasible: false, kind: "dualMode", reason, warnings: [] };
 
+/** What a workshop gets of an example, band up to 12 GHz. */
+export const sheetOf = (candidate: Candidate) => {
+  if (!candidate.feasible) throw new Error(candidate.reason);
+  return buildSheet(candidate, { highestFrequency: 12e9 });
+};
+
+/** A step, a ring slot, two cones: nothing that a kind of horn would be. */
+export const ownProfile = horn(
+  "custom",
+  {
+    z: [-0.09, -0.07, -0.07, -0.055, -0.055, -0.05, -0.05, -0.03, -0.02, 0],
+    radius: [0.01, 0.01, 0.013, 0.013, 0.02, 0.02, 0.013, 0.013, 0.02, 0.022],
+  },
+  0.048,
+);
+
 const radius = 0.034;
 export const te11 = sampledField(radius, (rho, phi) => modeField(TE11, radius, rho, phi));
 export const tm11 = sampledField(radius, (rho, phi) => modeField(TM11, radius, rho, phi));
@@ -122,6 +140,10 @@ export const examples: Record<string, () => Drawing> = {
       { label: "Dual-mode", candidate: noHorn },
       { label: "Corrugated", candidate: corrugatedHorn },
     ]),
+  "build, smooth": () => buildDrawing(sheetOf(smoothHorn)),
+  "build, dual-mode": () => buildDrawing(sheetOf(dualModeHorn)),
+  "build, corrugated": () => buildDrawing(sheetOf(corrugatedHorn)),
+  "build, own profile": () => buildDrawing(sheetOf(ownProfile)),
   fields: () =>
     apertureFields(
       [

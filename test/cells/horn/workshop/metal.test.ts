@@ -86,6 +86,18 @@ describe("outer wall", () => {
     expect(Math.max(...outer.map(([, r]) => r))).toBe(0.021);
   });
 
+  test("behind a slot the wall follows a flare that is wider than the slot", () => {
+    const profile = {
+      z: [-0.09, -0.06, -0.06, -0.055, -0.055, -0.03, 0],
+      radius: [0.01, 0.01, 0.02, 0.02, 0.01, 0.01, 0.03],
+    };
+    const outer = outerWall(profile, 0.002);
+    expect(outer.slice(-2)).toEqual([
+      [-0.03, 0.012],
+      [0, 0.032],
+    ]);
+  });
+
   test("steps nearer than the wall is thick leave no knot", () => {
     const profile = { z: [-0.05, -0.02, -0.02, -0.019, -0.019, 0], radius: [0.01, 0.01, 0.012, 0.012, 0.015, 0.02] };
     const outer = outerWall(profile, 0.003);
