@@ -10,12 +10,18 @@ export interface Guide {
   modeCount: number;
 }
 
-/** Between guide i and guide i + 1. */
+/**
+ * What the wall does between guide i and guide i + 1, and so what the field in the aperture is expanded in:
+ * "smooth": a step of a taper's staircase; modes of the smaller guide, coupled as in the taper.
+ * "step": a shallow step of the metal; modes of the smaller guide.
+ * "edge": a step of the metal; functions with the field's behaviour at its edge.
+ */
+export type ApertureKind = "smooth" | "step" | "edge";
+
 export interface Aperture {
-  /** basis functions: the modes of the smaller guide */
+  kind: ApertureKind;
+  /** basis functions */
   count: number;
-  /** the wall goes on smoothly here: a step of a taper's staircase, not of the metal */
-  smooth: boolean;
 }
 
 export interface Chain {
@@ -24,17 +30,22 @@ export interface Chain {
 }
 
 export interface Fineness {
-  /** modes on the smaller side of a step */
+  /** functions at an edge */
+  edgeCount: number;
+  /** modes in tapers and at shallow steps */
   modeCount: number;
-  /** sections of each taper, by its place among the pieces; 1 for a guide */
+  /** steps of each taper, by its place among the pieces */
   sections: number[];
 }
+
+/** A step whose smaller radius is above this share of the larger is shallow. */
+const shallowAbove = 0.96;
 
 /**
  * Chain of the pieces. A taper of n steps has guides of radii in a geometric series from its first to its last, the
  * boundaries at the geometric means between: symmetric about every guide, so that the error is even in the step.
  */
-export function chainOf(pieces: Piece[], { modeCount, sections }: Fineness): Chain {
+export function chainOf(pieces: Piece[], fineness: Fineness): Chain {
   const guides: Guide[] = [];
   const smooth: boolean[] = [];
   const append = (radius: number, length: number, isSmooth: boolean): void => {
@@ -42,7 +53,7 @@ export function chainOf(pieces: Piece[], { modeCount, sections }: Fineness): Cha
     if (before && before.radius === radius) before.length += length;
     else {
       if (before) smooth.push(isSmooth);
-      guides.push({ radius, length, modeCount });
+      guides.push({ radius, length, modeCount: fineness.modeCount });
     }
   };
   pieces.forEach((piece, p) => {
@@ -51,7 +62,7 @@ export function chainOf(pieces: Piece[], { modeCount, sections }: Fineness): Cha
       append(startRadius, length, false);
       return;
     }
-    const n = sections[p]!;
+    const n = fineness.sections[p]!;
     const step = Math.log(endRadius / startRadius) / n;
     const along = (share: number): number => (length * Math.expm1(step * share)) / Math.expm1(step * n);
     for (let i = 0; i <= n; i++) {
@@ -59,17 +70,32 @@ export function chainOf(pieces: Piece[], { modeCount, sections }: Fineness): Cha
       append(radius, along(Math.min(n, i + 0.5)) - along(Math.max(0, i - 0.5)), i > 0);
     }
   });
-  return withModeCounts(guides, smooth, modeCount);
-}
-
-/** Each aperture carries `modeCount` modes of its smaller guide, each guide enough for the largest ratio at its two ends. */
-function withModeCounts(guides: Guide[], smooth: boolean[], modeCount: number): Chain {
-  const apertures: Aperture[] = smooth.map((isSmooth) => ({ count: modeCount, smooth: isSmooth }));
-  smooth.forEach((isSmooth, i) => {
-    if (isSmooth) return;
-    const [left, right] = [guides[i]!, guides[i + 1]!];
-    const [small, large] = left.radius < right.radius ? [left, right] : [right, left];
-    large.modeCount = Math.max(large.modeCount, Math.round((modeCount * large.radius) / small.radius));
+  const apertures = smooth.map((isSmooth, i): Aperture => {
+    if (isSmooth) return { kind: "smooth", count: fineness.modeCount };
+    const [a, b] = [guides[i]!.radius, guides[i + 1]!.radius];
+    const shallow = Math.min(a, b) > shallowAbove * Math.max(a, b);
+    return shallow ? { kind: "step", count: fineness.modeCount } : { kind: "edge", count: fineness.edgeCount };
+  });
+  apertures.forEach((aperture, i) => {
+    const small = Math.min(guides[i]!.radius, guides[i + 1]!.radius);
+    for (const g of [i, i + 1]) raiseModeCount(guides[g]!, aperture, small, g === 0 || g === guides.length - 1);
   });
   return { guides, apertures };
+}
+
+/** κ = χ·a/b up to which a sum over modes is explicit at an edge; its tail beyond is known to 1e-5 of the whole there. */
+const edgeReach = 60;
+/** γL up to which the modes of a short guide are taken as reaching its other end. */
+const lineReach = 5;
+const mostModes = 600;
+
+/** Enough modes for the sums at this aperture. They are only summed: the number of unknowns is the aperture's. */
+function raiseModeCount(guide: Guide, { kind, count }: Aperture, small: number, matched: boolean): void {
+  if (kind === "edge") {
+    const toOtherEnd = matched ? 0 : (lineReach * guide.radius) / guide.length;
+    const reach = Math.max((edgeReach * guide.radius) / small, toOtherEnd);
+    guide.modeCount = Math.max(guide.modeCount, 2 * Math.ceil(Math.min(reach / Math.PI, mostModes / 2)));
+  } else if (kind === "step") {
+    guide.modeCount = Math.max(guide.modeCount, Math.round((count * guide.radius) / small));
+  }
 }

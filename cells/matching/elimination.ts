@@ -1,33 +1,76 @@
 // Small real symmetric systems, one for each frequency, solved side by side: the frequency ("lane") is the innermost index,
 // so that a matrix element of all lanes is contiguous: A[(row·columns + column)·lanes + lane]. Symmetric ones: lower half.
 
-/** out[p, q] += Σ_n a[n, p]·b[n, q]·w[n]: a and b are without frequency, w [n × lanes]. */
+import type { RealMatrix } from "./couplings.ts";
+
+/** Where a block of a larger matrix of lanes is added to: its first element is the matrix's first; `columns` of the whole. */
+export interface Target {
+  out: Float64Array;
+  columns: number;
+}
+
+/** out[p, q] += sign·Σ_{n < rows} a[n, p]·b[n, q]·w[n]: a and b are without frequency, w [rows × lanes]. */
 export function addGram(
-  out: Float64Array,
-  a: { rows: number; columns: number; values: Float64Array },
-  b: { rows: number; columns: number; values: Float64Array },
+  { out, columns }: Target,
+  a: RealMatrix,
+  b: RealMatrix,
   w: Float64Array,
+  rows: number,
   lanes: number,
-  lower = false,
-  outColumns = b.columns,
-  sign = 1,
+  sign: 1 | -1,
 ): void {
-  const P = a.columns;
-  const Q = b.columns;
-  for (let n = 0; n < a.rows; n++) {
-    const wn = n * lanes;
-    for (let p = 0; p < P; p++) {
-      const ap = sign * a.values[n * P + p]!;
-      if (ap === 0) continue;
-      const last = lower ? p + 1 : Q;
-      for (let q = 0; q < last; q++) {
-        const f = ap * b.values[n * Q + q]!;
-        if (f === 0) continue;
-        const o = (p * outColumns + q) * lanes;
-        for (let l = 0; l < lanes; l++) out[o + l]! += f * w[wn + l]!;
+  for (let n = 0; n < Math.min(rows, a.rows, b.rows); n++) {
+    for (let p = 0; p < a.columns; p++) {
+      const left = sign * a.values[n * a.columns + p]!;
+      if (left === 0) continue;
+      for (let q = 0; q < b.columns; q++) {
+        const factor = left * b.values[n * b.columns + q]!;
+        if (factor !== 0) addLane(out, (p * columns + q) * lanes, w, n * lanes, factor, lanes);
       }
     }
   }
+}
+
+/** The lower half of `addGram` with b = a. */
+export function addGramLower(
+  { out, columns }: Target,
+  a: RealMatrix,
+  w: Float64Array,
+  rows: number,
+  lanes: number,
+): void {
+  for (let n = 0; n < Math.min(rows, a.rows); n++) {
+    for (let p = 0; p < a.columns; p++) {
+      const left = a.values[n * a.columns + p]!;
+      if (left === 0) continue;
+      for (let q = 0; q <= p; q++) {
+        const factor = left * a.values[n * a.columns + q]!;
+        if (factor !== 0) addLane(out, (p * columns + q) * lanes, w, n * lanes, factor, lanes);
+      }
+    }
+  }
+}
+
+/** out[p, q] += sign·matrix[p, q]·weight: the matrix is without frequency, weight [lanes]. */
+export function addScaled(
+  { out, columns }: Target,
+  matrix: RealMatrix,
+  weight: Float64Array,
+  lower: boolean,
+  sign: 1 | -1 = 1,
+): void {
+  const lanes = weight.length;
+  for (let p = 0; p < matrix.rows; p++) {
+    const end = lower ? p + 1 : matrix.columns;
+    for (let q = 0; q < end; q++) {
+      const factor = sign * matrix.values[p * matrix.columns + q]!;
+      if (factor !== 0) addLane(out, (p * columns + q) * lanes, weight, 0, factor, lanes);
+    }
+  }
+}
+
+function addLane(out: Float64Array, to: number, w: Float64Array, from: number, factor: number, lanes: number): void {
+  for (let l = 0; l < lanes; l++) out[to + l]! += factor * w[from + l]!;
 }
 
 /**
