@@ -48,6 +48,18 @@ export interface DrawingContext {
   width: number;
 }
 
+/** A file of its own kind that a drawing can be saved as. */
+export interface DrawingFile {
+  /** on its button: "DXF" */
+  label: string;
+  /** of its name, without the dot */
+  extension: string;
+  /** media type */
+  type: string;
+  /** made when it is asked for */
+  text: () => string;
+}
+
 /** A figure as physics hands it over: a text alternative, a way to draw it, the numbers in it. */
 export interface Drawing {
   /** what a reader who can't see it should know, with numbers */
@@ -55,6 +67,8 @@ export interface Drawing {
   draw: (context: DrawingContext) => Element;
   /** the numbers drawn, for CSV: one array of rows, first row the column names with units */
   data?: (string | number)[][];
+  /** further files, beside the SVG and the CSV that the page makes itself */
+  files?: DrawingFile[];
 }
 
 export interface Figure {

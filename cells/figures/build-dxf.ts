@@ -5,6 +5,7 @@ import { Colors, DxfWriter, point2d, point3d, Units } from "@tarikjabiri/dxf";
 import type { BuildSheet } from "../horn/workshop/build-sheet.ts";
 import type { ZR } from "../horn/workshop/metal.ts";
 import { toMm } from "../units.ts";
+import type { DrawingFile } from "./drawing.ts";
 
 /** Layers of the file, each with what is on it. */
 export const dxfLayers = { inner: "INNER_WALL", outer: "OUTER_WALL", faces: "END_FACES", axis: "AXIS" } as const;
@@ -48,4 +49,9 @@ export function buildDxf(sheet: BuildSheet): string {
   const beyond = axisBeyond * (mouth - throat);
   line([throat - beyond, 0], [mouth + beyond, 0], dxfLayers.axis);
   return file.stringify();
+}
+
+/** The file as a drawing offers it: `{ ...buildDrawing(sheet), files: [dxfFile(sheet)] }`. */
+export function dxfFile(sheet: BuildSheet): DrawingFile {
+  return { label: "DXF", extension: "dxf", type: "image/vnd.dxf", text: () => buildDxf(sheet) };
 }

@@ -18,4 +18,18 @@ export interface Drawing {
   draw: (context: DrawingContext) => Element;
   /** the numbers drawn, for CSV: one array a row, first row the column names with units */
   data?: (string | number)[][];
+  /** further files that it can be saved as, beside SVG and CSV */
+  files?: DrawingFile[];
+}
+
+/** A file of its own kind that a drawing can be saved as. */
+export interface DrawingFile {
+  /** what a reader calls it: "DXF" */
+  label: string;
+  /** of its name, without the dot */
+  extension: string;
+  /** media type */
+  type: string;
+  /** made when it is asked for */
+  text: () => string;
 }

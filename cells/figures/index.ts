@@ -15,7 +15,7 @@ export { type BuildTables, buildTables, type SheetTable } from "./build-tables.t
 export { type ComparedPattern, type ComparisonOptions, comparison } from "./comparison.ts";
 export { type DishSectionOptions, dishSection } from "./dish-section.ts";
 export { type DispersionCurve, type DispersionOptions, dispersion } from "./dispersion.ts";
-export type { Drawing, DrawingContext } from "./drawing.ts";
+export type { Drawing, DrawingContext, DrawingFile } from "./drawing.ts";
 export { type ApertureField, sampledField, strengthAtWall, sumOfFields } from "./field-plate.ts";
 export { type DrawnHorn, hornsToScale } from "./horns-to-scale.ts";
 export { type PatternDifference, patternDifference } from "./kit/pattern-difference.ts";

@@ -58,6 +58,12 @@ export function figureBlock(context: PageContext, first: ShownEntry, titleLevel:
             if (text) saveText(document, `${file}.svg`, "image/svg+xml", text);
           },
         });
+      for (const { label, extension, type, text } of figure?.drawing.files ?? [])
+        saves.push({
+          label,
+          describes: `save as ${label} file`,
+          save: () => saveText(document, `${file}.${extension}`, type, text()),
+        });
       parts.update(
         entry,
         {

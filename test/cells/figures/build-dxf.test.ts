@@ -2,7 +2,7 @@
 
 import DxfParser, { type ILineEntity, type ILwpolylineEntity } from "dxf-parser";
 import { describe, expect, test } from "vitest";
-import { buildDxf, dxfLayers } from "../../../cells/figures/build-dxf.ts";
+import { buildDxf, dxfFile, dxfLayers } from "../../../cells/figures/build-dxf.ts";
 import { buildSheet } from "../../../cells/horn/workshop/build-sheet.ts";
 import { assertClose } from "../../assert-close.ts";
 import { corrugatedHorn, dualModeHorn, smoothHorn } from "./examples.ts";
@@ -69,5 +69,6 @@ describe("DXF", () => {
     expect(file.header).toMatchObject({ $INSUNITS: 4, $MEASUREMENT: 1 });
     expect(file.entities).toHaveLength(5);
     expect(buildDxf(sheetOf(smoothHorn))).toBe(text);
+    expect(dxfFile(sheetOf(smoothHorn)).text()).toBe(text);
   });
 });

@@ -3,6 +3,7 @@
 import { readFileSync } from "node:fs";
 import type { Page } from "playwright-core";
 import { afterAll, beforeAll, describe, expect, test } from "vitest";
+import type { Figure } from "../../../runtime/shown.ts";
 import { calls, frames, type SamplePages, samplePages } from "./open-page.ts";
 
 let pages: SamplePages;
@@ -118,6 +119,12 @@ describe("drawings", () => {
     const drawing = await text("drawing");
     expect(drawing.file).toBe("patterns.svg");
     expect(drawing.text).toMatch(/^<svg [^>]*xmlns="http:\/\/www.w3.org\/2000\/svg"[\s\S]*<polyline[\s\S]*<\/svg>$/);
+    await page.evaluate(() => {
+      const value = window.sample.cell("patterns").value as Figure;
+      const dxf = { label: "DXF", extension: "dxf", type: "image/vnd.dxf", text: () => "0\nEOF\n" };
+      window.sample.put("patterns", { value: { ...value, drawing: { ...value.drawing, files: [dxf] } } });
+    });
+    expect(await text("DXF")).toEqual({ file: "patterns.dxf", text: "0\nEOF\n" });
   });
 
   test("a figure that is still being computed shows what the file holds, and says so", async () => {
