@@ -10,6 +10,8 @@ export type {
   MarginMark,
   MarginNote,
   Note,
+  Rationale,
+  RestedOn,
   Table,
   TableCell,
   TableRow,

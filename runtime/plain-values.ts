@@ -1,5 +1,6 @@
 // A study's values as plain JSON data: what the command line prints and what a page hands over on request, the same in both.
 
+import { rationaleFindings } from "./rationale-findings.ts";
 import { isShown, type Shown } from "./shown.ts";
 import type { CellView, Study } from "./study.ts";
 
@@ -9,7 +10,10 @@ export type Plain = null | boolean | number | string | Plain[] | { [name: string
 export interface FoundWarning {
   /** the first cell, in source order, that carries it */
   cell: string;
-  /** the warning's own code; "margin" for a warning that is only a note; "not-finite" for a number that JSON can't hold */
+  /**
+   * the warning's own code; "margin" for a warning that is only a note; "moved" and "inherited" for a
+   * rationale; "not-finite" for a number that JSON can't hold
+   */
   code: string;
   text: string;
   /** true: its words stand somewhere on the page */
@@ -56,6 +60,7 @@ export function studyValues(study: Study): StudyValues {
     warnings: [
       ...walk.warnings.map((warning) => ({ ...warning, shown: page.includes(tidy(warning.text)) })),
       ...marginWarnings(results, walk.warnings),
+      ...rationaleWarnings(results),
     ],
     failed: study.cells.flatMap((cell) => (cell.state === "failed" ? [failedCell(study, cell)] : [])),
   };
@@ -77,6 +82,14 @@ function marginWarnings(cells: readonly CellView[], carried: readonly { text: st
     const text = tidy(value.markdown);
     if (text === "" || texts.some((one) => text.includes(one))) return [];
     return [{ cell: name, code: "margin", text, shown: true }];
+  });
+}
+
+/** Rationales that no longer stand as agreed, or never were agreed here. */
+function rationaleWarnings(cells: readonly CellView[]): FoundWarning[] {
+  return cells.flatMap(({ name, state, value }) => {
+    if (state === "failed" || !isShown(value) || value.shows !== "rationale") return [];
+    return rationaleFindings(value).map(({ code, text }) => ({ cell: name, code, text, shown: true }));
   });
 }
 

@@ -119,7 +119,8 @@ export interface RestedOn {
   label: string;
   /** as agreed that day */
   agreed: number;
-  now: number;
+  /** null: there is no such number any more, the feed it belongs to can't be realized */
+  now: number | null;
   /** may move by this much either way, > 0 */
   tolerance: number;
   /** "dBi", "mm"; empty for a plain ratio */

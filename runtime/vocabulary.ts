@@ -17,6 +17,7 @@ import type {
 } from "./shown.ts";
 import { significant } from "./shown-number.ts";
 
+export { rationale, restsOn } from "./rationale.ts";
 export { show } from "./shown-number.ts";
 
 function quantityGiven(text: string, options: declare.QuantityOptions): number {

@@ -24,7 +24,7 @@ export const IMPURE_GLOBALS: ReadonlySet<string> = new Set(
 
 /** Names of the vocabulary, to say "import it" when one is missing. */
 export const VOCABULARY: ReadonlySet<string> = new Set(
-  "given head note lead margin caution figure table show background markdown".split(" "),
+  "given head note lead margin caution figure table show background markdown rationale restsOn".split(" "),
 );
 
 /** The module that a notebook imports its vocabulary from. */

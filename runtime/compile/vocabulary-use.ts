@@ -28,7 +28,11 @@ export function vocabularyUse(
       if (call === declaration) declareGiven(cell, call, callee, report);
       else report("given", `${word}(…) must be alone as the value of a top-level const`, call, cell);
     } else if (word === "margin") {
-      placeMargin(cell, call, byName, report);
+      placeMargin(cell, call, byName, report, word);
+    } else if (word === "rationale") {
+      if (call !== declaration)
+        report("margin", "rationale(…) must be alone as the value of a top-level const", call, cell);
+      else placeMargin(cell, call, byName, report, word);
     } else if (word === "background") {
       placed.add(root);
       if (root !== unwrapped(callee)) report("background", "background must be imported by its own name", call, cell);
@@ -65,12 +69,18 @@ function declareGiven(cell: CellDraft, call: Node, callee: Node, report: Report)
   if (cell.draft.free.awaits) report("given", `${cell.name} is a given, so it can't await anything`, call, cell);
 }
 
-function placeMargin(cell: CellDraft, call: Node, byName: ReadonlyMap<string, CellDraft>, report: Report): void {
+function placeMargin(
+  cell: CellDraft,
+  call: Node,
+  byName: ReadonlyMap<string, CellDraft>,
+  report: Report,
+  word: string,
+): void {
   const argument = children(call, "arguments")[0];
   const root = argument && rootIdentifier(argument);
   const name = identifierName(root);
   if (root && cell.inputs.includes(name) && byName.has(name)) cell.beside ??= name;
-  else report("margin", "margin(…) must name the cell it stands beside as its first argument", argument ?? call, cell);
+  else report("margin", `${word}(…) must name the cell it stands beside as its first argument`, argument ?? call, cell);
 }
 
 function noteBackground(

@@ -1,0 +1,28 @@
+// What is to be said of a rationale: that a number it rests on has moved, or that nobody has agreed to it here yet.
+
+import type { Rationale, RestedOn } from "./shown.ts";
+import { show } from "./shown-number.ts";
+
+export interface RationaleFinding {
+  code: "moved" | "inherited";
+  text: string;
+}
+
+/** A number that was rested on, in its own unit and with the digits it was agreed with: "44.71 dBi". */
+export function restedText(value: number | null, { unit, digits }: Pick<RestedOn, "unit" | "digits">): string {
+  return value === null ? "no value" : show(value, unit, digits);
+}
+
+/** One sentence for each number that moved, one for an agreement that was only inherited. */
+export function rationaleFindings({ decision, numbers, inherited }: Rationale): RationaleFinding[] {
+  const moved = numbers
+    .filter((number) => number.moved)
+    .map(
+      (number): RationaleFinding => ({
+        code: "moved",
+        text: `"${decision}" rests on ${number.label}, agreed as ${restedText(number.agreed, number)}, now ${restedText(number.now, number)}.`,
+      }),
+    );
+  if (inherited === undefined) return moved;
+  return [{ code: "inherited", text: `"${decision}" is inherited from ${inherited}, not yet confirmed.` }, ...moved];
+}
