@@ -116,27 +116,49 @@ function clearance(points: ZR[], slots: RingSlot[]): ZR[] {
  */
 export function outerWall(profile: HornProfile, wall: number): ZR[] {
   const covered = clearance(wallPoints(profile), wallFeatures(profile).slots);
-  const start = covered[0]![0];
-  const moved: [number, number][] = [];
+  let outline = covered.map(([z, r]): ZR => [z, r + wall]);
   covered.forEach(([z, r], i) => {
     const before = covered[i - 1];
-    const after = covered[i + 1];
-    const up = (a: ZR | undefined, b: ZR | undefined) => a && b && b[0] === a[0] && b[1] > a[1];
-    const down = (a: ZR | undefined, b: ZR | undefined) => a && b && b[0] === a[0] && b[1] < a[1];
-    const here: ZR = [z, r];
-    const rises = up(here, after) || up(before, here);
-    const falls = down(here, after) || down(before, here);
-    const shift = rises && !falls ? -wall : falls && !rises ? wall : 0;
-    moved.push([Math.min(0, Math.max(start, z + shift)), r + wall]);
+    if (!before || before[0] !== z || before[1] === r) return;
+    // The wall of the wider side goes on over the narrower one.
+    outline = raised(outline, r > before[1] ? [z - wall, z] : [z, z + wall], Math.max(r, before[1]) + wall);
   });
-  // Where shifted corners overtook each other (steps closer than the wall is thick) the larger radius holds.
-  const outline: ZR[] = [];
-  for (const point of moved) {
-    while (outline.length > 0 && outline.at(-1)![0] > point[0] && outline.at(-1)![1] <= point[1]) outline.pop();
-    const last = outline.at(-1);
-    outline.push(last && last[0] > point[0] ? [last[0], point[1]] : point);
+  return withoutIdlePoints(outline);
+}
+
+/** A wall that is at least so high between two planes. Vertical runs are where two values meet at one z. */
+function raised(points: readonly ZR[], [from, to]: readonly [number, number], height: number): ZR[] {
+  const result: ZR[] = [];
+  for (let i = 1; i < points.length; i++) {
+    const [z0, r0] = points[i - 1]!;
+    const [z1, r1] = points[i]!;
+    if (z1 <= z0) continue;
+    const crossing = r1 === r0 ? z0 : z0 + ((height - r0) / (r1 - r0)) * (z1 - z0);
+    const radius = (z: number): number => (z === z1 ? r1 : r0 + ((r1 - r0) * (z - z0)) / (z1 - z0));
+    const cuts = [z0, ...[from, to, crossing].filter((z) => z > z0 && z < z1).sort((p, q) => p - q), z1];
+    for (let k = 1; k < cuts.length; k++) {
+      const [u, v] = [cuts[k - 1]!, cuts[k]!];
+      const middle = (u + v) / 2;
+      const lift = middle > from && middle < to ? height : 0;
+      result.push([u, Math.max(radius(u), lift)], [v, Math.max(radius(v), lift)]);
+    }
   }
-  return outline;
+  return result;
+}
+
+/** Without points that repeat the one before or lie on the line of their neighbours. */
+function withoutIdlePoints(points: readonly ZR[]): ZR[] {
+  const kept: ZR[] = [];
+  for (const point of points) {
+    const [before, last] = [kept.at(-2), kept.at(-1)];
+    if (last && point[0] - last[0] <= abrupt && Math.abs(point[1] - last[1]) <= abrupt) continue;
+    if (before && last) {
+      const off = (last[1] - before[1]) * (point[0] - before[0]) - (point[1] - before[1]) * (last[0] - before[0]);
+      if (Math.abs(off) <= abrupt * Math.hypot(point[0] - before[0], point[1] - before[1])) kept.pop();
+    }
+    kept.push(point);
+  }
+  return kept;
 }
 
 /** Largest radius that the outer wall has to clear, m. */
