@@ -16,6 +16,7 @@ export { type ComparedPattern, type ComparisonOptions, comparison } from "./comp
 export { type DishSectionOptions, dishSection } from "./dish-section.ts";
 export { type DispersionCurve, type DispersionOptions, dispersion } from "./dispersion.ts";
 export type { Drawing, DrawingContext, DrawingFile } from "./drawing.ts";
+export { distanceText, type ExposureTable, exposureTable } from "./exposure-table.ts";
 export { type ApertureField, sampledField, strengthAtWall, sumOfFields } from "./field-plate.ts";
 export { type DrawnHorn, hornsToScale } from "./horns-to-scale.ts";
 export { type PatternDifference, patternDifference } from "./kit/pattern-difference.ts";
