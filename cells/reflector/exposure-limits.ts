@@ -16,51 +16,56 @@ export interface ExposureLimit {
   averagingTime: number;
 }
 
-/** ICNIRP's levels are taken from above 2 GHz, the FCC's end at 100 GHz. */
-const icnirp = { above: 2e9, max: 300e9 };
-const fcc = { min: 1.5e9, max: 100e9 };
+/** Below 400 MHz other rows of the tables hold, and other quantities; the FCC's rows end at 100 GHz. */
+const known = { min: 0.4e9, max: 300e9 };
+const fccEnd = 100e9;
 const minutes = 60;
 
 /**
- * Reference levels that hold at a frequency, strictest standard first as listed: ICNIRP 2020 above 2 GHz up to 300 GHz
- * (whole body 10 and 50 W/m²; local 40 and 200 W/m² up to 6 GHz, 55 and 275 f^−0.177 W/m² beyond, f in GHz, 20 and 100 W/m²
- * at 300 GHz), FCC from 1.5 to 100 GHz (10 and 50 W/m²).
+ * Reference levels that hold at a frequency. ICNIRP 2020, whole body: f/200 and f/40 W/m² up to 2 GHz (f in MHz), 10 and 50
+ * beyond; local: 0.058 and 0.29 f^0.86 up to 2 GHz (f in MHz), 40 and 200 up to 6 GHz, 55 and 275 f^−0.177 beyond (f in GHz),
+ * 20 and 100 at 300 GHz. FCC: f/150 and f/30 W/m² up to 1.5 GHz (f in MHz), 10 and 50 from there to 100 GHz.
  *
  * Reference levels, not basic restrictions: near an antenna they are a screen, and a place that fails them has to be
  * assessed by someone licensed to do so.
  *
- * @param frequency Hz, 1.5…300 GHz
+ * @param frequency Hz, 0.4…300 GHz
  * @throws {RangeError} frequency out of range
- * @source ICNIRP, Health Phys. 118(5), 483–524, 2020, tables 5 and 6 (secondary transcription); 47 CFR 1.1310, table 1 (b)
+ * @source ICNIRP, Health Phys. 118(5), 483–524, 2020, tables 5 and 6 (secondary transcription; up to 2 GHz from memory);
+ *   47 CFR 1.1310, table 1 (below 1.5 GHz from memory)
  */
 export function exposureLimits(frequency: number): ExposureLimit[] {
-  requireNumber("exposureLimits: frequency", frequency, { min: fcc.min, max: icnirp.max, unit: "Hz" });
-  const limits: ExposureLimit[] = [];
-  if (frequency > icnirp.above) {
-    const standard = "ICNIRP 2020";
-    const wholeBody = { standard, over: "whole body", averagingTime: 30 * minutes } as const;
-    const local = { standard, over: "local", averagingTime: 6 * minutes } as const;
-    const patch = localDensity(frequency);
-    limits.push(
-      { ...wholeBody, who: "public", density: 10 },
-      { ...wholeBody, who: "occupational", density: 50 },
-      { ...local, who: "public", density: patch },
-      { ...local, who: "occupational", density: 5 * patch },
-    );
-  }
-  if (frequency <= fcc.max) {
-    const federal = { standard: "FCC 47 CFR 1.1310", over: "whole body" } as const;
-    limits.push(
-      { ...federal, who: "public", density: 10, averagingTime: 30 * minutes },
-      { ...federal, who: "occupational", density: 50, averagingTime: 6 * minutes },
-    );
-  }
-  return limits;
+  requireNumber("exposureLimits: frequency", frequency, { ...known, unit: "Hz" });
+  const fMHz = frequency / 1e6;
+  const standard = "ICNIRP 2020";
+  const wholeBody = { standard, over: "whole body", averagingTime: 30 * minutes } as const;
+  const local = { standard, over: "local", averagingTime: 6 * minutes } as const;
+  const [body, bodyAtWork] = frequency <= 2e9 ? [fMHz / 200, fMHz / 40] : [10, 50];
+  const [patch, patchAtWork] = localDensities(frequency);
+  const limits: ExposureLimit[] = [
+    { ...wholeBody, who: "public", density: body },
+    { ...wholeBody, who: "occupational", density: bodyAtWork },
+    { ...local, who: "public", density: patch },
+    { ...local, who: "occupational", density: patchAtWork },
+  ];
+  if (frequency > fccEnd) return limits;
+  const federal = { standard: "FCC 47 CFR 1.1310", over: "whole body" } as const;
+  const [open, controlled] = frequency <= 1.5e9 ? [fMHz / 150, fMHz / 30] : [10, 50];
+  return [
+    ...limits,
+    { ...federal, who: "public", density: open, averagingTime: 30 * minutes },
+    { ...federal, who: "occupational", density: controlled, averagingTime: 6 * minutes },
+  ];
 }
 
-/** ICNIRP's local level for the public, W/m². */
-function localDensity(frequency: number): number {
-  if (frequency <= 6e9) return 40;
-  if (frequency >= icnirp.max) return 20;
-  return 55 * (frequency / 1e9) ** -0.177;
+/** ICNIRP's local levels, W/m²: public, occupational. */
+function localDensities(frequency: number): [number, number] {
+  if (frequency >= known.max) return [20, 100];
+  if (frequency > 6e9) {
+    const shape = (frequency / 1e9) ** -0.177;
+    return [55 * shape, 275 * shape];
+  }
+  if (frequency > 2e9) return [40, 200];
+  const shape = (frequency / 1e6) ** 0.86;
+  return [0.058 * shape, 0.29 * shape];
 }

@@ -96,7 +96,7 @@ export interface ExposureDistance extends ExposureLimit {
 /**
  * Distances on the axis at which the reference levels that hold at this frequency are met, by the estimate of
  * `densityOnAxis`. For screening: the authority's own method and a licensed assessment decide.
- * @throws {RangeError} frequency outside 1.5…300 GHz, and as `nearFieldEstimate`
+ * @throws {RangeError} frequency outside 0.4…300 GHz, and as `nearFieldEstimate`
  */
 export function exposureDistances(transmitter: Transmitter): ExposureDistance[] {
   const estimate = nearFieldEstimate(transmitter);
