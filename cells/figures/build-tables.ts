@@ -57,7 +57,7 @@ function dimensionTable({ dimensions, slotTolerance }: BuildSheet): SheetTable {
     columns: [{ label: "Dimension (mm)" }, { label: "Tolerance (mm)" }],
     rows: dimensions.map((one) => ({
       key: one.label,
-      label: one.label,
+      label: one.label[0]!.toUpperCase() + one.label.slice(1),
       cells: [
         { text: valueText(one) },
         one.tolerance
@@ -138,7 +138,7 @@ function massTable({ masses, volume }: BuildSheet): SheetTable {
     columns: [{ label: "Density (g/cm³)" }, { label: "Mass (kg)" }],
     rows: masses.map(({ name, density, mass }) => ({
       key: name,
-      label: name,
+      label: name[0]!.toUpperCase() + name.slice(1),
       cells: [{ text: decimal(density / 1000, 2) }, { text: decimal(mass, mass < 0.1 ? 4 : 3) }],
     })),
     caption: `${decimal(volume * 1e6, 1)} cm³ of metal between the walls drawn, without flange and fixing.`,

@@ -155,10 +155,11 @@ function teethOf(slots: readonly RingSlot[], mouth: number): Tooth[] {
   });
 }
 
+/** Index of the worst; of those that are equal but for rounding, the first. */
 function worstOf<T>(items: readonly T[], badness: (item: T) => number): number {
   let worst = 0;
   items.forEach((item, i) => {
-    if (badness(item) > badness(items[worst]!)) worst = i;
+    if (badness(item) > badness(items[worst]!) + rounding * Math.abs(badness(item))) worst = i;
   });
   return worst;
 }

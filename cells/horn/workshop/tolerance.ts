@@ -27,7 +27,7 @@ interface Rule {
 const rules: Record<ToleranceClass, Rule> = {
   "guide bore": {
     allowed: (diameter) => diameter / 1000,
-    basis: "D/1000: cutoff within 0.1 %; as circular guides are specified (IEC 60153-4, from memory)",
+    basis: "D/1000: cutoff within 0.1 %; as standard circular guides are specified (IEC 60153-4)",
   },
   bore: {
     allowed: (_, wavelength) => wavelength / 200,
@@ -35,7 +35,7 @@ const rules: Record<ToleranceClass, Rule> = {
   },
   axial: { allowed: (_, wavelength) => wavelength / 100, basis: "λ/100: 3.6° of phase" },
   slot: { allowed: (_, wavelength) => wavelength / 500, basis: "λ/500: balance of a slot within 0.8 %" },
-  outside: { allowed: (size) => generalTolerance(size), basis: "general tolerance, ISO 2768-m (from memory)" },
+  outside: { allowed: (size) => generalTolerance(size), basis: "ISO 2768-m: general tolerance" },
 };
 
 const series = [1, 1.5, 2, 3, 4, 5, 6, 8];
@@ -68,7 +68,7 @@ function generalTolerance(size: number): number {
  * @param size             m, the dimension itself (a diameter for a bore)
  * @param highestFrequency Hz: its wavelength is the shortest and asks most
  * @throws {RangeError} size or frequency not positive
- * @source common practice, see the rules above; no standard prescribes them for horns
+ * @source common practice, see the rules above; no standard prescribes them for horns. IEC 60153-4 and ISO 2768-1 from memory
  */
 export function toleranceOf(what: ToleranceClass, size: number, highestFrequency: number): Tolerance {
   requirePositive("toleranceOf: size", size, "m");

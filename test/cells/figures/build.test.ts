@@ -121,7 +121,7 @@ describe("build tables", () => {
         true,
       );
     expect(tables.dimensions.caption).toContain("λ/500: balance of a slot within 0.8 %.");
-    expect(tables.dimensions.rows.find(({ label }) => label === "slots")!.cells[0]!.text).toBe("36");
+    expect(tables.dimensions.rows.find(({ label }) => label === "Slots")!.cells[0]!.text).toBe("36");
     for (const row of tables.dimensions.data) expect(row).toHaveLength(tables.dimensions.data[0]!.length);
   });
 
@@ -133,7 +133,7 @@ describe("build tables", () => {
         ["tooth", "passes"],
       ]),
     );
-    expect(tables.mass.rows.map(({ label }) => label)).toEqual(["aluminium 6061", "brass C36000", "copper C10100"]);
+    expect(tables.mass.rows.map(({ label }) => label)).toEqual(["Aluminium 6061", "Brass C36000", "Copper C10100"]);
     const grams = tables.mass.data.slice(1).map((row) => row[2] as number);
     assertClose(grams[1]! / grams[0]!, 8.49 / 2.7, { rel: 1e-12, because: "one volume" });
   });
