@@ -30,8 +30,8 @@ function barFor(narrowest: number, cut: number): number {
   return Math.min(chipRoom * 2 * narrowest, 3 * narrowest - cut - 2 * clearance);
 }
 
-/** How many places of each straight run of the bore are tried; even, so that the middle is among them. */
-const placesPerRun = 24;
+/** Places are tried a two-hundredth of the length apart, and always in the middle of a straight run. */
+const places = 200;
 
 /**
  * The place that asks the longest bar against its thickness, with every place cut from the end that makes it easier.
@@ -61,12 +61,14 @@ interface Place {
 }
 
 function borePlaces(bore: readonly ZR[]): Place[] {
+  const length = bore.at(-1)![0] - bore[0]![0];
   return bore.slice(1).flatMap(([z1, r1], run) => {
     const [z0, r0] = bore[run]!;
     if (z1 === z0) return [];
-    return Array.from({ length: placesPerRun + 1 }, (_, k) => {
-      const z = z0 + ((z1 - z0) * k) / placesPerRun;
-      return { run, start: z, end: z, cut: r0 + ((r1 - r0) * k) / placesPerRun };
+    const count = 2 * Math.ceil((places * (z1 - z0)) / (2 * length));
+    return Array.from({ length: count + 1 }, (_, k) => {
+      const z = z0 + ((z1 - z0) * k) / count;
+      return { run, start: z, end: z, cut: r0 + ((r1 - r0) * k) / count };
     });
   });
 }

@@ -9,30 +9,33 @@ import type { ZR } from "./metal.ts";
 export function thinnestWall(inner: readonly ZR[], outer: readonly ZR[]): { thickness: number; z: number } {
   let best = { thickness: Number.POSITIVE_INFINITY, z: 0 };
   const scan = (corners: readonly ZR[], runs: readonly ZR[]): void => {
-    for (const [z, r] of corners)
-      for (let i = 1; i < runs.length; i++) {
-        // Runs farther along the axis than the best found can't be nearer.
-        if (runs[i]![0] < z - best.thickness || runs[i - 1]![0] > z + best.thickness) continue;
+    let first = 1;
+    for (const [z, r] of corners) {
+      // Runs farther along the axis than the best found can't be nearer; both walls ascend in z.
+      while (first < runs.length - 1 && runs[first]![0] < z - best.thickness) first++;
+      for (let i = first; i < runs.length && runs[i - 1]![0] <= z + best.thickness; i++) {
         const thickness = distance([z, r], runs[i - 1]!, runs[i]!);
         if (thickness < best.thickness) best = { thickness, z };
       }
+    }
   };
   scan(inner, outer);
   scan(outer, inner);
+  let first = 1;
   for (const [z, r] of inner) {
-    const metal = radiusOver(outer, z) - r;
+    while (first < outer.length - 1 && outer[first]![0] < z) first++;
+    const metal = radiusOver(outer, z, first) - r;
     if (metal < Math.min(0, best.thickness)) best = { thickness: metal, z };
   }
   return best;
 }
 
-/** Larger radius of a wall at a plane, m. */
-function radiusOver(wall: readonly ZR[], z: number): number {
+/** Larger radius of a wall at a plane, m; `first` is the run that reaches it first. */
+function radiusOver(wall: readonly ZR[], z: number, first: number): number {
   let largest = 0;
-  for (let i = 1; i < wall.length; i++) {
+  for (let i = first; i < wall.length && wall[i - 1]![0] <= z; i++) {
     const [z0, r0] = wall[i - 1]!;
     const [z1, r1] = wall[i]!;
-    if (z < z0 || z > z1) continue;
     largest = Math.max(largest, z1 === z0 ? Math.max(r0, r1) : r0 + ((r1 - r0) * (z - z0)) / (z1 - z0));
   }
   return largest;
