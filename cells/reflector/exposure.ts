@@ -13,7 +13,7 @@ export interface Transmitter {
   diameter: number;
   /** dBi, on axis */
   gainDbi: number;
-  /** W, mean, at the antenna's port */
+  /** W, mean, at the antenna's port; 0 for one that only receives */
   power: number;
 }
 
@@ -43,7 +43,7 @@ export interface NearFieldEstimate {
  * (a horn's mouth is small: there it is rougher). It leaves out
  * what the ground or a wall reflects, spillover beside the dish, and leaks: these ask for a measurement.
  *
- * @throws {RangeError} an argument not positive; a gain above the normal gain of this size, (ka)² + 2ka
+ * @throws {RangeError} frequency or diameter not positive, power negative; a gain above the normal gain of this size, (ka)² + 2ka
  * @source FCC OET Bulletin 65, edition 97-01, eq. 11–18; a hundredth beside the beam: the text after them (from memory);
  *   normal gain: Harrington, J. Res. NBS 64D, 1960 (from memory)
  */
@@ -119,7 +119,7 @@ function distanceTo(density: number, { power, gainDbi }: Transmitter, estimate: 
 function checked(where: string, transmitter: Transmitter): Transmitter {
   requirePositive(`${where}: frequency`, transmitter.frequency, "Hz");
   requirePositive(`${where}: diameter`, transmitter.diameter, "m");
-  requirePositive(`${where}: power`, transmitter.power, "W");
+  requireNumber(`${where}: power`, transmitter.power, { min: 0, unit: "W" });
   requireNumber(`${where}: gain`, transmitter.gainDbi, { unit: "dBi" });
   return transmitter;
 }

@@ -116,6 +116,13 @@ describe("field before a dish", () => {
     },
   );
 
+  test("one that only receives: nothing anywhere", () => {
+    const receiver = { ...station, power: 0 };
+    expect(nearFieldEstimate(receiver)).toMatchObject({ surfaceDensity: 0, nearFieldDensity: 0, besideBeamDensity: 0 });
+    for (const { distance, exceededAtSurface } of exposureDistances(receiver))
+      expect([distance, exceededAtSurface]).toEqual([0, false]);
+  });
+
   test("between near field and surface: met on the axis, not before the surface", () => {
     // 15 W: 4P/A = 13.3, 16ηP/πD² = 8.6 W/m² against 10
     const [wholeBody] = exposureDistances({ ...station, power: 15 });
@@ -134,7 +141,7 @@ describe("field before a dish", () => {
   });
 
   test("bad input names what is wrong", () => {
-    expect(() => nearFieldEstimate({ ...station, power: 0 })).toThrow("power must be a number above 0 W; got 0 W");
+    expect(() => nearFieldEstimate({ ...station, power: -1 })).toThrow("power must be a number at least 0 W; got -1 W");
     expect(() => nearFieldEstimate({ ...station, gainDbi: 52 })).toThrow(
       /gain must be at most the normal gain of an aperture of 2\.4 m, 51\.0[78] dBi; got 52 dBi/,
     );
