@@ -25,8 +25,11 @@ export function show(value: number, unitText = "", digits?: number): string {
   const number = inUnit(value, unit);
   const text = digits === undefined ? significant(number) : fixed(number, digits);
   if (unit.text === "") return text;
-  return unit.text === "deg" ? `${text}°` : `${text}${SPACE}${unit.text}`;
+  return unit.text === "deg" ? `${text}°` : `${text}${SPACE}${printed(unit.text)}`;
 }
+
+/** A compound unit as it is printed: "W/m^2" is "W/m²". */
+const printed = (unit: string): string => unit.replace(/\^2\b/g, "²").replace(/\^3\b/g, "³").replace(/\*/g, "·");
 
 /** Four significant figures: as many as a reader takes in; powers of ten only far from one. */
 export function significant(value: number, figures = 4): string {

@@ -99,6 +99,8 @@ describe("show", () => {
     [3e-7, "", undefined, "3×10⁻⁷"],
     [-1.25e9, "", undefined, "−1.25×10⁹"],
     [0, "m", undefined, "0 m"],
+    [52.4, "W/m²", 1, "52.4 W/m²"],
+    [2.7e3, "g/cm^3", 2, "2.70 g/cm³"],
   ])("%d in %s to %s places: %s", (value, unit, digits, text) => {
     // The space before the unit doesn't break.
     expect(show(value, unit, digits)).toBe(text.replace(" ", "\u00a0"));
