@@ -30,12 +30,14 @@ export interface Chain {
 }
 
 export interface Fineness {
-  /** functions at an edge */
-  edgeCount: number;
+  /** functions at an edge up to three wavelengths wide; more at a wider one */
+  edgeFunctions: number;
   /** modes in tapers and at shallow steps */
   modeCount: number;
   /** steps of each taper, by its place among the pieces */
   sections: number[];
+  /** 1/m, the highest of the band */
+  highestWaveNumber: number;
 }
 
 /** A step whose smaller radius is above this share of the larger is shallow. */
@@ -70,17 +72,33 @@ export function chainOf(pieces: Piece[], fineness: Fineness): Chain {
       append(radius, along(Math.min(n, i + 0.5)) - along(Math.max(0, i - 0.5)), i > 0);
     }
   });
+  if (guides.length === 1) {
+    // A bare guide: an aperture in its middle, which does nothing.
+    const half = { ...guides[0]!, length: guides[0]!.length / 2 };
+    guides.splice(0, 1, half, { ...half });
+    smooth.push(true);
+  }
   const apertures = smooth.map((isSmooth, i): Aperture => {
     if (isSmooth) return { kind: "smooth", count: fineness.modeCount };
     const [a, b] = [guides[i]!.radius, guides[i + 1]!.radius];
     const shallow = Math.min(a, b) > shallowAbove * Math.max(a, b);
-    return shallow ? { kind: "step", count: fineness.modeCount } : { kind: "edge", count: fineness.edgeCount };
+    return shallow
+      ? { kind: "step", count: fineness.modeCount }
+      : { kind: "edge", count: edgeFunctionsAt(Math.min(a, b), fineness) };
   });
   apertures.forEach((aperture, i) => {
     const small = Math.min(guides[i]!.radius, guides[i + 1]!.radius);
     for (const g of [i, i + 1]) raiseModeCount(guides[g]!, aperture, small, g === 0 || g === guides.length - 1);
   });
   return { guides, apertures };
+}
+
+/** Travelling modes for which the level's number of functions is meant: those of an aperture three wavelengths wide. */
+const meantTravelling = 6;
+
+/** Functions at an edge of this radius. About 2ka/π modes travel there: the zeros of J1 and J1′ lie π/2 apart. */
+function edgeFunctionsAt(radius: number, { edgeFunctions, highestWaveNumber }: Fineness): number {
+  return edgeFunctions + Math.max(0, Math.ceil((2 * highestWaveNumber * radius) / Math.PI) - meantTravelling - 1);
 }
 
 /** κ = χ·a/b up to which a sum over modes is explicit at an edge; its tail beyond is known to 1e-5 of the whole there. */
@@ -93,7 +111,7 @@ const mostModes = 600;
 function raiseModeCount(guide: Guide, { kind, count }: Aperture, small: number, matched: boolean): void {
   if (kind === "edge") {
     const toOtherEnd = matched ? 0 : (lineReach * guide.radius) / guide.length;
-    const reach = Math.max((edgeReach * guide.radius) / small, toOtherEnd);
+    const reach = Math.max(((edgeReach + 10 * Math.max(0, count - 9)) * guide.radius) / small, toOtherEnd);
     guide.modeCount = Math.max(guide.modeCount, 2 * Math.ceil(Math.min(reach / Math.PI, mostModes / 2)));
   } else if (kind === "step") {
     guide.modeCount = Math.max(guide.modeCount, Math.round((count * guide.radius) / small));

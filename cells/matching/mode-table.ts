@@ -38,3 +38,10 @@ export function modeTable(count: number): ModeTable {
 export function wallValues(x: number): { value: number; slope: number } {
   return { value: besselJ1(x), slope: besselJPrime1(x) };
 }
+
+/** Number of modes of a guide that travel at a wave number: those with χ below k·radius. */
+export function travellingCount(radius: number, k: number, { chi, count }: ModeTable): number {
+  let n = 0;
+  while (n < count && chi[n]! < k * radius) n++;
+  return n;
+}

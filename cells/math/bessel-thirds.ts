@@ -1,7 +1,7 @@
 // Bessel functions of order 2/3, 5/3, 8/3, …: the Hankel transforms of fields with the edge behaviour of a right-angled metal edge.
 
 /** Γ(2/3), A&S 1964, 6.1.13 */
-const gammaTwoThirds = 1.3541179394264004;
+const gammaTwoThirds = 1.3541179394264005;
 
 /** Beyond this, and beyond the highest order, Hankel's expansion of the two lowest orders holds to rounding. */
 const asymptoticFrom = 25;

@@ -1,0 +1,8 @@
+// Mode matching: from a profile to the modes at the mouth.
+
+export type { BandAnalysis } from "./band-analysis.ts";
+export type { BandOptions } from "./band-options.ts";
+export type { Convergence } from "./convergence.ts";
+export { junctionCouplings } from "./couplings.ts";
+export { bandAnalysis, createMatcher, type Matcher } from "./matcher.ts";
+export type { Level } from "./refinement.ts";

@@ -1,0 +1,126 @@
+// What a matcher keeps between calls: couplings that depend on the geometry alone, and sums that depend on band and geometry.
+// Only what a changed profile needs anew is computed.
+
+import type { ApertureBasis, Side } from "./aperture-basis.ts";
+import type { Aperture, Chain, Guide } from "./chain.ts";
+import { couplings, type RealMatrix } from "./couplings.ts";
+import { edgeCouplings, edgeTail } from "./edge-basis.ts";
+import { type ModeTable, modeTable } from "./mode-table.ts";
+import { type SectionMatrices, sectionMatrices, type WaveBand } from "./section-matrices.ts";
+import { taperCouplings, taperGenerator } from "./taper-couplings.ts";
+
+export interface Memory {
+  /** at least so many modes */
+  table(count: number): ModeTable;
+  bases(chain: Chain): ApertureBasis[];
+  sections(chain: Chain, bases: ApertureBasis[], band: WaveBand): SectionMatrices[];
+  /** forgets what the last few calls had no use for */
+  endCall(): void;
+}
+
+/** A kept entry that so many calls had no use for is forgotten. */
+const keptCalls = 6;
+
+export function createMemory(): Memory {
+  let table = modeTable(64);
+  let call = 0;
+  let nextId = 0;
+  const matrices = createStore<RealMatrix>();
+  const sides = createStore<Side>();
+  const sections = createStore<SectionMatrices>();
+  const stores = [matrices, sides, sections];
+
+  return {
+    table: tableOf,
+    bases({ guides, apertures }) {
+      return apertures.map((aperture, i) => {
+        const left = guides[i]!;
+        const right = guides[i + 1]!;
+        const small = Math.min(left.radius, right.radius);
+        return { count: aperture.count, left: sideOf(aperture, left, small), right: sideOf(aperture, right, small) };
+      });
+    },
+    sections({ guides }, bases, band) {
+      const inBand = band.nodes.join(" ") + ` ${band.high}`;
+      return guides.map((guide, i) => {
+        const left = bases[i - 1]?.right;
+        const right = bases[i]?.left;
+        const { radius, length, modeCount } = guide;
+        // A guide matched at one end has no length in its admittance.
+        const shape = left && right ? `${radius} ${length} ${modeCount}` : `${radius} ${modeCount}`;
+        return sections.get(`${shape} ${left?.id} ${right?.id} ${inBand}`, () =>
+          sectionMatrices(guide, { left, right }, band, tableOf(modeCount)),
+        );
+      });
+    },
+    endCall() {
+      for (const store of stores) store.forget(call - keptCalls);
+      call++;
+    },
+  };
+
+  function tableOf(count: number): ModeTable {
+    if (count > table.count) table = modeTable(Math.max(count, 2 * table.count));
+    return table;
+  }
+
+  function sideOf({ kind, count }: Aperture, guide: Guide, radius: number): Side {
+    const { modeCount } = guide;
+    return sides.get(`${kind} ${count} ${radius} ${guide.radius} ${modeCount}`, () => {
+      const id = nextId++;
+      const ratio = radius / guide.radius;
+      if (kind === "edge") {
+        const tail = { ...edgeTail(ratio, count, modeCount, tableOf(modeCount)), radius };
+        return { id, modes: edgeMatrix(ratio, count, modeCount), tail };
+      }
+      const counts = { smallCount: count, largeCount: modeCount };
+      if (kind === "step" || ratio === 1) {
+        return { id, modes: couplings(ratio, counts, tableOf(Math.max(count, modeCount))) };
+      }
+      return { id, modes: smoothMatrix(-Math.log(ratio), count, modeCount) };
+    });
+  }
+
+  /** The first rows of a matrix kept for its ratio: all teeth share the ratio 1. */
+  function edgeMatrix(ratio: number, count: number, rows: number): RealMatrix {
+    const make = (): RealMatrix => edgeCouplings(ratio, count, rows, tableOf(rows));
+    const key = `edge ${ratio} ${count}`;
+    const kept = matrices.get(key, make);
+    const whole = kept.rows >= rows ? kept : matrices.replace(key, make());
+    return whole.rows === rows ? whole : { ...whole, rows, values: whole.values.subarray(0, rows * count) };
+  }
+
+  /** exp(T·logRatio) between `count` modes; further modes of the guide are not reached. */
+  function smoothMatrix(logRatio: number, count: number, rows: number): RealMatrix {
+    const square = matrices.get(`smooth ${logRatio.toPrecision(10)} ${count}`, () =>
+      taperCouplings(taperGenerator(count, tableOf(count)), logRatio),
+    );
+    if (rows === count) return square;
+    const values = new Float64Array(rows * count);
+    values.set(square.values.subarray(0, Math.min(rows, count) * count));
+    return { rows, columns: count, values };
+  }
+
+  function createStore<T>() {
+    const kept = new Map<string, { value: T; call: number }>();
+    return {
+      get(key: string, make: () => T): T {
+        const found = kept.get(key);
+        if (found) {
+          found.call = call;
+          return found.value;
+        }
+        const value = make();
+        kept.set(key, { value, call });
+        return value;
+      },
+      replace(key: string, value: T): T {
+        kept.set(key, { value, call });
+        return value;
+      },
+      forget(before: number): void {
+        for (const [key, entry] of kept) if (entry.call < before) kept.delete(key);
+      },
+    };
+  }
+}

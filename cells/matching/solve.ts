@@ -1,0 +1,63 @@
+// One solution of a horn at one fineness, at every frequency; redone by another route where rounding has spoilt it.
+
+import { speedOfLight } from "../constants.ts";
+import type { ComplexVector } from "../math/complex.ts";
+import { chainOf, type Fineness } from "./chain.ts";
+import type { Memory } from "./memory.ts";
+import type { Answer } from "./outcome.ts";
+import type { Piece } from "./pieces.ts";
+import { type WaveBand, waveBand } from "./section-matrices.ts";
+import { type Prepared, sweep } from "./sweep.ts";
+
+/** Frequencies solved side by side: their matrices stay in the processor's nearest cache. */
+const lanes = 8;
+
+/** Power that must not be missing: the reduction is redone beyond it. */
+const acceptedPowerError = 1e-10;
+
+/** Real admittances given to the ports inside the reduction, tried in turn: each moves its resonances elsewhere. */
+const portTerms = [0, 0.83, -1.37, 2.9];
+
+/** Everything of a horn that doesn't depend on the single frequency. */
+export function prepare(memory: Memory, pieces: Piece[], fineness: Fineness, band: WaveBand): Prepared {
+  const chain = chainOf(pieces, fineness);
+  const bases = memory.bases(chain);
+  const sections = memory.sections(chain, bases, band);
+  const most = chain.guides.reduce((count, { modeCount }) => Math.max(count, modeCount), 0);
+  return { chain, bases, sections, band, table: memory.table(most) };
+}
+
+export function bandOf(frequencies: number[]): WaveBand {
+  return waveBand(frequencies.map((f) => (2 * Math.PI * f) / speedOfLight));
+}
+
+/**
+ * Answers at the frequencies, in order. The real form loses digits near a resonance of the horn closed by its port terms;
+ * the power balance shows it, and another term there has none.
+ */
+export function solveBand(prepared: Prepared, frequencies: number[], progress?: (share: number) => void): Answer[] {
+  const answers: Answer[] = [];
+  for (let i = 0; i < frequencies.length; i += lanes) {
+    const some = frequencies.slice(i, i + lanes);
+    sweep(prepared, some).forEach((answer, lane) => {
+      answers.push(isSound(answer) ? answer : soundest(prepared, some[lane]!, answer));
+    });
+    progress?.(Math.min(1, (i + lanes) / frequencies.length));
+  }
+  return answers;
+}
+
+const isSound = ({ powerError, outgoing }: Answer): boolean =>
+  Math.abs(powerError) <= acceptedPowerError && isFiniteVector(outgoing);
+
+const isFiniteVector = ({ re, im }: ComplexVector): boolean => re.every(Number.isFinite) && im.every(Number.isFinite);
+
+function soundest(prepared: Prepared, frequency: number, first: Answer): Answer {
+  let best = first;
+  for (const term of portTerms.slice(1)) {
+    const [again] = sweep(prepared, [frequency], term);
+    if (isSound(again!)) return again!;
+    if (!(Math.abs(best.powerError) <= Math.abs(again!.powerError))) best = again!;
+  }
+  return best;
+}
