@@ -20,6 +20,8 @@ export interface SectionFrame {
   mouthX: number;
   /** px, half of the outside diameter */
   half: number;
+  /** so slim on this paper that diameters can't be written along their lines: they stand below, and need room */
+  slim: boolean;
 }
 
 const size = textSize.drawing;
@@ -37,19 +39,26 @@ function words(sheet: BuildSheet, value: number, diameter: boolean, room: number
   );
   if (!found?.tolerance) return bare;
   const whole = `${bare} ${plusMinus(found.tolerance.plusMinus)}`;
-  return textWidth(whole, size) + 10 <= room ? whole : bare;
+  return textWidth(whole, size) + 2 <= room ? whole : bare;
 }
+
+/** True for a half width at which some diameter isn't written along its line. */
+export const isSlim = (half: number): boolean => 2 * half < textWidth("Ø 000.00", size) + 6;
+const belowSlim = 24;
+/** px beyond the half width that a datum takes above it. */
+export const datumRoom = (slim: boolean): number => (slim ? 46 : 30);
 
 /** Lengths from the mouth, the shortest nearest to the horn, and the datum itself. */
 export function chainsFromDatum(frame: SectionFrame, top: number): { elements: Element[]; bottom: number } {
-  const { pen, sheet, at, mouthX, axisY } = frame;
+  const { pen, sheet, at, mouthX, axisY, slim } = frame;
+  const first = top + 14 + (slim ? belowSlim : 0);
   const lengths = listedStations(sheet.stations)
     .filter(({ name }) => name !== "mouth")
     .reverse();
   const outerAt = (z: number): number => axisY + outerRadius(sheet, z) * frame.scale;
   const elements = lengths.map(({ z }, i) => {
     const x = at(z, 0)[0];
-    const lineY = top + 14 + i * rowHeight;
+    const lineY = first + i * rowHeight;
     return dimension(pen, {
       along: "x",
       from: mouthX,
@@ -59,7 +68,7 @@ export function chainsFromDatum(frame: SectionFrame, top: number): { elements: E
       words: words(sheet, -z, false, mouthX - x),
     });
   });
-  const bottom = top + 14 + Math.max(0, lengths.length - 1) * rowHeight + 4;
+  const bottom = first + Math.max(0, lengths.length - 1) * rowHeight + 4;
   return { elements: [...elements, ...datum(frame)], bottom };
 }
 
@@ -76,8 +85,8 @@ function outerRadius({ outer }: BuildSheet, z: number): number {
 }
 
 /** The plane of the mouth, from which everything is measured: a filled triangle on it, and its name. */
-function datum({ pen, mouthX, axisY, half }: SectionFrame): Element[] {
-  const y = axisY - half - 9;
+function datum({ pen, mouthX, axisY, half, slim }: SectionFrame): Element[] {
+  const y = axisY - half - datumRoom(slim) + 21;
   return [
     pen("path", {
       d: `M${coordinate(mouthX)} ${coordinate(y - 12)}V${coordinate(axisY - half + 2)}`,
@@ -91,7 +100,7 @@ function datum({ pen, mouthX, axisY, half }: SectionFrame): Element[] {
 
 /** Inside diameters at both ends and the outside one. */
 export function diameters(frame: SectionFrame): Element[] {
-  const { pen, sheet, at, scale, throatX, mouthX, axisY } = frame;
+  const { pen, sheet, at, scale, throatX, mouthX, axisY, slim } = frame;
   const throat = sheet.inner[0]![1];
   const mouth = sheet.inner.at(-1)![1];
   const outside = Math.max(...sheet.outer.map(([, r]) => r));
@@ -110,7 +119,7 @@ export function diameters(frame: SectionFrame): Element[] {
   };
   // The outside is measured where it is widest; its extension lines start there.
   const widest = sheet.outer.findLast(([, r]) => r === outside)!;
-  const apart = 2 * outside * scale > textWidth("Ø 000.00", size) + 6 ? 34 : 60;
+  const apart = slim ? 62 : 34;
   return [
     across(throat, { x: throatX - 30, from: throatX - 3 }),
     across(mouth, { x: mouthX + 26, from: mouthX + 3 }),
@@ -139,7 +148,7 @@ export function boreLabels(sheet: BuildSheet): BoreLabel[] {
 
 /** px that they take above the section. */
 export function labelRoom(labels: readonly BoreLabel[]): number {
-  return Math.max(30, 20 + labelLeading * labels.reduce((sum, { lines }) => sum + lines.length, 0) + 8);
+  return 20 + labelLeading * labels.reduce((sum, { lines }) => sum + lines.length, 0) + 8;
 }
 
 /** Each label stands a step above the one before it, so that no leader crosses another's words. */

@@ -7,8 +7,10 @@ import { toMm } from "../units.ts";
 import {
   boreLabels,
   chainsFromDatum,
+  datumRoom,
   diameters,
   drawBoreLabels,
+  isSlim,
   labelRoom,
   type SectionFrame,
 } from "./build-dimensions.ts";
@@ -25,8 +27,8 @@ import { decimal, listed, millimetres } from "./kit/words.ts";
 const tallest = 380;
 /** Largest scale: a horn for millimetre waves is drawn no larger than twenty times its size, at 4 px a mm. */
 const largestScale = 80_000;
-const roomLeft = 66;
-const roomRight = 118;
+const roomLeft = 78;
+const roomRight = 120;
 const leading = 17;
 
 /**
@@ -65,9 +67,10 @@ function draw(pen: Pen, width: number, alt: string, sheet: BuildSheet): Element 
   const half = outside * scale;
   // A short horn stands in the middle of the place it has.
   const throatX = roomLeft + Math.max(0, (width - roomLeft - roomRight - length * scale) / 2);
-  const axisY = labelRoom(labels) + half;
+  const slim = isSlim(half);
+  const axisY = Math.max(labelRoom(labels), datumRoom(slim)) + half;
   const at: SectionFrame["at"] = (z, r) => [throatX + (z + length) * scale, axisY - r * scale];
-  const frame: SectionFrame = { pen, sheet, at, scale, axisY, throatX, mouthX: throatX + length * scale, half };
+  const frame: SectionFrame = { pen, sheet, at, scale, axisY, throatX, mouthX: throatX + length * scale, half, slim };
   const chains = chainsFromDatum(frame, axisY + half + 12);
   const foot = drawFoot(pen, { top: chains.bottom + 16, width, scale }, sheet);
   return drawingRoot(

@@ -144,6 +144,10 @@ export const examples: Record<string, () => Drawing> = {
   "build, dual-mode": () => buildDrawing(sheetOf(dualModeHorn)),
   "build, corrugated": () => buildDrawing(sheetOf(corrugatedHorn)),
   "build, own profile": () => buildDrawing(sheetOf(ownProfile)),
+  "build, slim": () =>
+    buildDrawing(
+      sheetOf(horn("custom", { z: [-1.2, -1.19, -1.19, -0.1, 0], radius: [0.012, 0.012, 0.014, 0.014, 0.03] }, 0.064)),
+    ),
   fields: () =>
     apertureFields(
       [
