@@ -22,9 +22,14 @@ const VERBS: Record<string, { usage: string; summary: string; load: () => Promis
     summary: "write it as one HTML file to send to others",
     load: () => import("./verbs/export.ts"),
   },
+  fork: {
+    usage: "fork <notebook|export.html>",
+    summary: "write a study of your own from another, with new givens",
+    load: () => import("./verbs/fork.ts"),
+  },
   check: {
     usage: "check <notebook>",
-    summary: "types, cycles, every cell, every figure, every warning",
+    summary: "types, cycles, every cell, figure, warning and rationale",
     load: () => import("./verbs/check.ts"),
   },
 };
@@ -41,7 +46,8 @@ ${lines.join("\n")}
 "hornbook VERB --help" tells each verb's options with examples; "hornbook --version" the version.
 A notebook is a TypeScript file; those at hand are in notebooks/.
 
-Exit code: ${EXIT.ok} all well, ${EXIT.found} a cell failed or check found something, ${EXIT.arguments} the arguments can't be used.
+Exit code: ${EXIT.ok} all well, ${EXIT.found} a cell failed or check found something, ${EXIT.arguments} the arguments can't be used,
+${EXIT.rationales} check found only rationales that have moved or are inherited.
 HORNBOOK_TRACE=1 adds the stack to an error.
 `;
 }

@@ -2,10 +2,11 @@
 
 import { createHash } from "node:crypto";
 import { readFile } from "node:fs/promises";
+import { dirname, sep } from "node:path";
 import type { Asset } from "../runtime/server/local-server.ts";
 import type { OpenState, ProblemPlace } from "../runtime/server/open-state.ts";
 import { type FileWatch, watchFiles } from "../runtime/server/watch-files.ts";
-import { type Bundle, BundleFailure, bundleStyle, createBundler } from "./bundle.ts";
+import { type Bundle, BundleFailure, bundleStyle, createBundler, ownFiles } from "./bundle.ts";
 import { NOTEBOOK_ENTRY, PAGE_ENTRY } from "./entries.ts";
 import type { NotebookPlace } from "./notebook-place.ts";
 
@@ -13,6 +14,8 @@ export interface LiveSite {
   state(): OpenState;
   page(token: string): string;
   asset(path: string): Asset | undefined;
+  /** files of its own, in its folder, that the notebook imports: path from there, text */
+  filesBeside(): Promise<{ path: string; text: string }[]>;
   close(): Promise<void>;
 }
 
@@ -115,6 +118,17 @@ export async function createLiveSite(
     state,
     asset: (path) => assets.get(path),
     page: (token) => pageHtml(place.label, known, { ...state(), token }),
+    async filesBeside() {
+      const home = `${dirname(place.path)}${sep}`;
+      const [, ...others] = ownFiles(notebookInputs, place, projectRoot);
+      const own = others.filter((path) => path.startsWith(home));
+      return Promise.all(
+        own.map(async (path) => ({
+          path: path.slice(home.length).split(sep).join("/"),
+          text: await readFile(path, "utf8"),
+        })),
+      );
+    },
     async close() {
       watch.close();
       await Promise.all([pageBundler.dispose(), notebookBundler.dispose()]);

@@ -36,20 +36,33 @@ async function beginning(path: string, shownAs: string): Promise<string> {
   }
 }
 
-/** Writes beside the file, then renames. @throws {Failure} the system refuses; what was there before is still there */
-export async function writeWhole(path: string, shownAs: string, text: string): Promise<void> {
+/**
+ * Writes beside the file, then renames: at every moment the file is the former or the new one, whole. Keeps its permissions.
+ * @param last called just before the new file takes its place; may throw to leave the former one there
+ * @throws {Failure} the system refuses; what was there before is still there
+ */
+export async function writeWhole(
+  path: string,
+  shownAs: string,
+  text: string,
+  last: () => Promise<void> = async () => {},
+): Promise<void> {
   const fresh = join(dirname(path), `.${basename(path)}.${randomBytes(6).toString("hex")}`);
   try {
+    const mode = (await stat(path).catch(() => undefined))?.mode;
     const file = await open(fresh, "wx");
     try {
+      if (mode !== undefined) await file.chmod(mode & 0o777);
       await file.writeFile(text, "utf8");
       await file.sync();
     } finally {
       await file.close();
     }
+    await last();
     await rename(fresh, path);
   } catch (error) {
     await rm(fresh, { force: true });
+    if (error instanceof Failure) throw error;
     throw new Failure(`can't write ${shownAs}: ${systemWords(error)}.`);
   }
 }

@@ -3,7 +3,7 @@
 
 /** Every write says which version it was made against, so that a file changed meanwhile is never overwritten. */
 export interface DeskRequest {
-  /** digest of the source that the page shows: the desk refuses when the file on disk is another */
+  /** the source that the page shows (`study.source`): the desk refuses when the file on disk is another */
   base: string;
 }
 
@@ -43,7 +43,8 @@ export interface Desk {
   addNote(request: DeskRequest & { after: string; markdown: string }): Promise<DeskAnswer>;
   /** Adds a rationale beside a cell; the numbers as they are now are agreed today. */
   addRationale(request: DeskRequest & { beside: string; draft: RationaleDraft; now: number[] }): Promise<DeskAnswer>;
-  editRationale(request: DeskRequest & { cell: string; draft: RationaleDraft }): Promise<DeskAnswer>;
+  /** New words or numbers. A number already there keeps what was agreed; a new one is agreed as it is `now`, in the draft's order. */
+  editRationale(request: DeskRequest & { cell: string; draft: RationaleDraft; now: number[] }): Promise<DeskAnswer>;
   /** Renews the agreement: the former one goes into the history; an inherited rationale is confirmed. `now` in SI, by label. */
   agreeAgain(request: DeskRequest & { cell: string; author: string; now: Record<string, number> }): Promise<DeskAnswer>;
   /** Replaces the source of one cell (with the comment that leads it). Refused when the result doesn't parse. */

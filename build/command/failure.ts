@@ -5,6 +5,8 @@ export const EXIT = {
   ok: 0,
   /** a cell failed, or `check` found something */
   found: 1,
+  /** `check` found nothing but rationales that have moved or were only inherited */
+  rationales: 3,
   /** the arguments, or the file they name, can't be used */
   arguments: 2,
 } as const;

@@ -1,6 +1,8 @@
 // hornbook check: everything that can be wrong with a notebook, in one report.
 
 import { studyValues } from "../../runtime/plain-values.ts";
+import { isShown } from "../../runtime/shown.ts";
+import type { Study } from "../../runtime/study.ts";
 import { BundleFailure, ownFiles } from "../bundle.ts";
 import { EXIT } from "../command/failure.ts";
 import { type Progress, startProgress } from "../command/progress.ts";
@@ -31,10 +33,12 @@ Looks for what can be wrong with a notebook and prints a report:
   numbers    every number is finite
   figures    every figure draws, with caption and text alternative
   warnings   all that travel with a value are listed; one that stands nowhere on the page is a finding
+  rationales each stands as agreed: no number it rests on has moved, and none is only inherited
 
 ${SET_HELP}
 
-Exit code: 0 nothing found, 1 something found, 2 the arguments or the file can't be used.
+Exit code: 0 nothing found, 1 something found, 3 nothing but rationales that have moved or are inherited, 2 the arguments or
+the file can't be used.
 
   hornbook check notebooks/trade-study.ts
 `,
@@ -48,7 +52,9 @@ Exit code: 0 nothing found, 1 something found, 2 the arguments or the file can't
       const sections = await inspect(place, projectRoot, texts, progress);
       progress.end();
       process.stdout.write(report(place.label, sections));
-      return sections.some(({ fails }) => fails) ? EXIT.found : EXIT.ok;
+      const bad = sections.filter(({ fails }) => fails).map(({ name }) => name);
+      if (bad.length === 0) return EXIT.ok;
+      return bad.every((name) => name === RATIONALES) ? EXIT.rationales : EXIT.found;
     } finally {
       progress.end();
     }
@@ -95,7 +101,8 @@ function inspectStudy({ study, bundle }: HeadlessStudy): Section[] {
   ];
   const results = study.cells.filter(({ hidden }) => !hidden).length;
   const figures = checkFigures(study);
-  const doubts = warnings.filter(({ code }) => code !== "not-finite");
+  const ofRationales = warnings.filter(({ code }) => code === "moved" || code === "inherited");
+  const doubts = warnings.filter((warning) => warning.code !== "not-finite" && !ofRationales.includes(warning));
   const hidden = doubts.filter(({ shown }) => !shown).length;
   return [
     section("structure", structure, "sound"),
@@ -135,7 +142,19 @@ function inspectStudy({ study, bundle }: HeadlessStudy): Section[] {
         ({ cell, code, text, shown }) => `${cell}: ${shown ? "" : "NOT SHOWN ON THE PAGE: "}${code}: ${text}`,
       ),
     },
+    section(
+      RATIONALES,
+      ofRationales.map(({ cell, code, text }) => `${study.file}:${study.cell(cell).line}: ${cell} ${code}: ${text}`),
+      agreedWords(study),
+    ),
   ];
+}
+
+const RATIONALES = "rationales";
+
+function agreedWords(study: Study): string {
+  const count = study.cells.filter(({ value }) => isShown(value) && value.shows === "rationale").length;
+  return count === 0 ? "none written" : count === 1 ? "1, as agreed" : `${count}, all as agreed`;
 }
 
 const found = (count: number): string => (count === 1 ? "1 finding" : `${count} findings`);

@@ -5,6 +5,7 @@ import type { OpenState } from "../../runtime/server/open-state.ts";
 import { openBrowser } from "../browser.ts";
 import { EXIT, Failure } from "../command/failure.ts";
 import type { Verb } from "../command/verb.ts";
+import { createDesk } from "../desk.ts";
 import { createLiveSite } from "../live-site.ts";
 import { findNotebook, notebooksAtHand } from "../notebook-place.ts";
 
@@ -43,6 +44,7 @@ The page is served to this machine only (127.0.0.1). Stop with Ctrl-C.
       page: site.page,
       asset: site.asset,
       hello: site.state,
+      actions: createDesk(place, { filesBeside: site.filesBeside }),
     }).catch(async (error: NodeJS.ErrnoException) => {
       await site.close();
       if (error.code === "EADDRINUSE") {

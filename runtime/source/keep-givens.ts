@@ -1,0 +1,77 @@
+// The texts of givens written into their declarations.
+
+import { child, children, type Node } from "../compile/syntax.ts";
+import {
+  argumentsOf,
+  callOf,
+  draftNamed,
+  type Edit,
+  propertyOf,
+  RewriteRefused,
+  rewritten,
+  type SourceView,
+  textOf,
+  valueNode,
+  viewSource,
+} from "./edit.ts";
+import { stringLiteral, textLiteral } from "./literal.ts";
+
+/**
+ * Writes what the page's fields say into the source: a quantity's first argument, a choice's default, a switch's true or false,
+ * a text. Whether a given takes its text was decided by the engine, which refuses what doesn't fit.
+ *
+ * @param texts by name: "2.4 m"
+ * @returns the new source
+ * @throws {RewriteRefused} a name that is no given, a file that can't be read
+ */
+export function keepGivens(source: string, file: string, texts: Readonly<Record<string, string>>): string {
+  const view = viewSource(source, file);
+  return rewritten(view, givenEdits(view, texts));
+}
+
+export function givenEdits(view: SourceView, texts: Readonly<Record<string, string>>): Edit[] {
+  return Object.entries(texts).flatMap(([name, text]) => givenEdit(view, name, text));
+}
+
+function givenEdit(view: SourceView, name: string, text: string): Edit[] {
+  const found = callOf(draftNamed(view, name));
+  const form = found?.path.at(-1);
+  if (!found || !form || !["given", "choice", "switch", "text"].includes(form))
+    throw new RewriteRefused(`${view.file}: ${name} is no given, so its value can't be kept`);
+  const [first, second] = argumentsOf(found.call) as [Node, Node];
+  const replace = (node: Node, words: string): Edit[] =>
+    view.source.slice(node.start, node.end) === words ? [] : [{ start: node.start, end: node.end, text: words }];
+  switch (form) {
+    case "given":
+      return textOf(first) === text ? [] : replace(first, stringLiteral(text));
+    case "switch":
+      return replace(first, text === "on" || text === "true" ? "true" : "false");
+    case "text":
+      return textOf(first) === text ? [] : replace(first, textLiteral(text));
+    default:
+      return choiceEdit(view, first, second, text, replace);
+  }
+}
+
+/** The first option is the default unless `default` says otherwise: it is added, changed, or taken away again. */
+function choiceEdit(
+  view: SourceView,
+  options: Node,
+  details: Node,
+  text: string,
+  replace: (node: Node, words: string) => Edit[],
+): Edit[] {
+  const known = children(options, "elements").map(textOf);
+  if (!known.includes(text)) throw new RewriteRefused(`${view.file}: ${stringLiteral(text)} is none of the options`);
+  const property = propertyOf(details, "default");
+  if (property) return replace(valueNode(property) as Node, stringLiteral(text));
+  if (known[0] === text) return [];
+  const last = children(details, "properties").at(-1);
+  if (!last) throw new RewriteRefused(`${view.file}: a choice without label and why can't be kept`);
+  const start = child(last, "key")?.start ?? last.start;
+  const before = view.source.slice(view.source.lastIndexOf("\n", start) + 1, start);
+  // on a line of its own like the others, or on theirs
+  const addition =
+    before.trim() === "" ? `,\n${before}default: ${stringLiteral(text)}` : `, default: ${stringLiteral(text)}`;
+  return [{ start: last.end, end: last.end, text: addition }];
+}
