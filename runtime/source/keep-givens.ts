@@ -2,6 +2,15 @@
 
 import { child, children, type Node } from "../compile/syntax.ts";
 import {
+  declareChoice,
+  declareQuantity,
+  declareSwitch,
+  declareText,
+  type GivenDeclaration,
+  Refusal,
+  readGiven,
+} from "../given.ts";
+import {
   argumentsOf,
   callOf,
   draftNamed,
@@ -14,15 +23,15 @@ import {
   valueNode,
   viewSource,
 } from "./edit.ts";
-import { stringLiteral, textLiteral } from "./literal.ts";
+import { literalValue, stringLiteral, textLiteral } from "./literal.ts";
 
 /**
  * Writes what the page's fields say into the source: a quantity's first argument, a choice's default, a switch's true or false,
- * a text. Whether a given takes its text was decided by the engine, which refuses what doesn't fit.
+ * a text.
  *
  * @param texts by name: "2.4 m"
  * @returns the new source
- * @throws {RewriteRefused} a name that is no given, a file that can't be read
+ * @throws {RewriteRefused} a name that is no given, a text that it refuses, a file that can't be read
  */
 export function keepGivens(source: string, file: string, texts: Readonly<Record<string, string>>): string {
   const view = viewSource(source, file);
@@ -39,6 +48,7 @@ function givenEdit(view: SourceView, name: string, text: string): Edit[] {
   if (!found || !form || !["given", "choice", "switch", "text"].includes(form))
     throw new RewriteRefused(`${view.file}: ${name} is no given, so its value can't be kept`);
   const [first, second] = argumentsOf(found.call) as [Node, Node];
+  requireTaken(form, first, second, text);
   const replace = (node: Node, words: string): Edit[] =>
     view.source.slice(node.start, node.end) === words ? [] : [{ start: node.start, end: node.end, text: words }];
   switch (form) {
@@ -52,6 +62,25 @@ function givenEdit(view: SourceView, name: string, text: string): Edit[] {
       return choiceEdit(view, first, second, text, replace);
   }
 }
+
+/** Asks the declaration itself, which is written out in literals, whether it takes the text. @throws {RewriteRefused} */
+function requireTaken(form: string, first: Node, second: Node, text: string): void {
+  const [value, details] = [literalValue(first), literalValue(second)];
+  if (value === undefined || details === undefined) return;
+  try {
+    readGiven(declarations[form]!(value as never, details as never), text);
+  } catch (error) {
+    if (error instanceof Refusal) throw new RewriteRefused(error.message);
+    throw error;
+  }
+}
+
+const declarations: Record<string, (value: never, details: never) => GivenDeclaration> = {
+  given: declareQuantity,
+  choice: declareChoice,
+  switch: declareSwitch,
+  text: declareText,
+};
 
 /** The first option is the default unless `default` says otherwise: it is added, changed, or taken away again. */
 function choiceEdit(

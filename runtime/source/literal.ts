@@ -10,7 +10,7 @@ import {
   parseModule,
   unwrapped,
 } from "../compile/syntax.ts";
-import { RewriteRefused } from "./edit.ts";
+import { keyName, RewriteRefused, textOf } from "./edit.ts";
 
 /** A string literal in double quotes. Line separators are escaped, so that a literal never spans lines. */
 export function stringLiteral(text: string): string {
@@ -104,4 +104,33 @@ export function safeExpression(text: string, known: ReadonlySet<string>): string
   };
   look(child(statement, "expression"));
   return trimmed;
+}
+
+/** The value of an expression made of literals alone; undefined for any other. */
+export function literalValue(node: Node | undefined): unknown {
+  if (!node) return undefined;
+  const inner = unwrapped(node);
+  switch (inner.type) {
+    case "Literal":
+      return field(inner, "value") ?? undefined;
+    case "TemplateLiteral":
+      return textOf(inner);
+    case "UnaryExpression": {
+      const value = literalValue(child(inner, "argument"));
+      return field(inner, "operator") === "-" && typeof value === "number" ? -value : undefined;
+    }
+    case "ArrayExpression": {
+      const values = children(inner, "elements").map(literalValue);
+      return values.includes(undefined) ? undefined : values;
+    }
+    case "ObjectExpression": {
+      const entries = children(inner, "properties").map((property) => {
+        const key = child(property, "key");
+        return [key && !field(property, "computed") ? keyName(key) : undefined, literalValue(child(property, "value"))];
+      });
+      return entries.flat().includes(undefined) ? undefined : Object.fromEntries(entries);
+    }
+    default:
+      return undefined;
+  }
 }

@@ -36,7 +36,9 @@ test("check: rationales that moved or are inherited are listed, with an exit cod
   expect(fine.out).toContain("rationales ✓ 1, as agreed");
   const moved = await run(["check", path, "--set", "side=1.3 m"]);
   expect(moved.code).toBe(3);
-  expect(moved.out).toContain('squareChosen moved: "Cut it square." rests on Side, agreed as 1.20 m, now 1.30 m.');
+  expect(moved.out.replaceAll("\u00a0", " ")).toContain(
+    'squareChosen moved: "Cut it square." rests on Side, agreed as 1.20 m, now 1.30 m.',
+  );
   await run(["fork", path, "--name", "Again"], { cwd: folder });
   const inherited = await run(["check", "again.ts"], { cwd: folder });
   expect(inherited.code).toBe(3);
@@ -84,6 +86,7 @@ test("fork: what can't be is one sentence, exit 2, and nothing is written", asyn
     [["fork", path, "--name", "?!"], /needs letters or digits/],
     [["fork", path, "--name", "x", "--set", "nope=1"], /has no cell nope/],
     [["fork", path, "--name", "x", "--set", "area=1"], /area is no given/],
+    [["fork", path, "--name", "x", "--set", "finish=gilded"], /Finish must be one of bare, painted; got gilded/],
     [["fork", path, "--name", "x", "--set", "side=9 GHz"], /Side must be a length between 0\.1 m and 5 m; got 9 GHz/],
     [["fork", path, "--name", "x", "--set", "side=90 m"], /Side must be a length between 0\.1 m and 5 m; got 90 m/],
     [["fork", path, "--name", "x", "--to", "nowhere"], /no such folder/],

@@ -48,7 +48,9 @@ describe("keepGivens", () => {
     expect(keepGivens(source, file, { side: "1.2 m", finish: "bare", framed: "off", remark: "none" })).toBe(source);
     expect(() => keepGivens(source, file, { area: "2 m^2" })).toThrow("notebooks/decided.ts: area is no given");
     expect(() => keepGivens(source, file, { nope: "2" })).toThrow("has no cell nope");
-    expect(() => keepGivens(source, file, { finish: "gilded" })).toThrow('"gilded" is none of the options');
+    expect(() => keepGivens(source, file, { finish: "gilded" })).toThrow(
+      "Finish must be one of bare, painted; got gilded",
+    );
   });
 
   test("hostile texts come out as the value of one literal", () => {
