@@ -43,6 +43,9 @@ export {
 export { type MachiningVerdict, type ShopLimits, usualShop } from "./horn/workshop/machining.ts";
 export { type MetalMass, metals } from "./horn/workshop/mass.ts";
 
+// Matching: the modes at the mouth of an actual profile, with the error that they are good to.
+export * from "./matching/index.ts";
+
 // Pattern: the one form in which every feed hands its far field on, and what can be read from it.
 export * from "./pattern/cuts.ts";
 export type { FeedPattern } from "./pattern/feed-pattern.ts";

@@ -7,11 +7,13 @@ import { type ComplexVector, complexVector } from "../math/complex.ts";
 import type { ApertureModes } from "../radiation/aperture-modes.ts";
 import { type BandOptions, checkFrequencies, plannedLevels, wantedErrors } from "./band-options.ts";
 import { bandWarnings } from "./band-warnings.ts";
+import { hasEdges } from "./chain.ts";
 import type { Convergence } from "./convergence.ts";
 import type { Memory } from "./memory.ts";
 import { travellingCount } from "./mode-table.ts";
+import { continuedTail } from "./mouth-tail.ts";
 import { isGuide, type Piece, profilePieces } from "./pieces.ts";
-import { type Level, type Refined, refine, solutionsOf, taperSteps } from "./refinement.ts";
+import { type Level, plannedSolutions, type Refined, refine, taperSteps } from "./refinement.ts";
 import { bandOf, prepare, solveBand } from "./solve.ts";
 
 /** Plain data: can be sent to and from a worker. */
@@ -75,23 +77,22 @@ function solvedAt({ memory, pieces, level, options, share }: Task): {
   const band = bandOf(frequencies);
   const byRule = taperSteps(pieces, level.stepsPerWavelength, speedOfLight / Math.max(...frequencies));
   const steps = byRule.map((n, p) => (isGuide(pieces[p]!) ? 1 : (options.taperSteps ?? n)));
-  const finenesses = solutionsOf(level, pieces, { steps, highestWaveNumber: band.high });
-  const prepared = finenesses.map((fineness) => prepare(memory, pieces, fineness, band));
+  const tapers = !pieces.every(isGuide);
+  const edges = hasEdges(pieces);
+  const plan = plannedSolutions(level, { tapers, edges }, { steps, highestWaveNumber: band.high });
+  const prepared = plan.map(({ fineness }) => prepare(memory, pieces, fineness, band));
   const solved = prepared.map((each, s) => solveBand(each, frequencies, (part) => share((s + part) / prepared.length)));
   const { chain, table } = prepared[0]!;
   const refined = frequencies.map((frequency, f) => {
     const k = (2 * Math.PI * frequency) / speedOfLight;
-    return refine(
-      solved.map((answers) => answers[f]!),
-      {
-        throat: travellingCount(pieces[0]!.startRadius, k, table),
-        mouth: travellingCount(pieces.at(-1)!.endRadius, k, table),
-      },
-    );
+    const answers = solved.map((each) => each[f]!);
+    return refine(plan, answers, {
+      throat: travellingCount(pieces[0]!.startRadius, k, table),
+      mouth: travellingCount(pieces.at(-1)!.endRadius, k, table),
+    });
   });
   const reflectionErrors = refined.map(({ reflectionError }) => reflectionError);
   const apertureError = Math.max(...refined.map((one) => one.apertureError));
-  const tapered = !pieces.every(isGuide);
   return {
     refined,
     convergence: {
@@ -99,7 +100,7 @@ function solvedAt({ memory, pieces, level, options, share }: Task): {
         (most, { kind, count }) => (kind === "edge" ? Math.max(most, count) : most),
         0,
       ),
-      taperModes: tapered || chain.apertures.some(({ kind }) => kind === "step") ? level.taperModes : 0,
+      taperModes: tapers || chain.apertures.some(({ kind }) => kind === "step") ? level.taperModes : 0,
       summedModes: chain.guides.reduce((most, { modeCount }) => Math.max(most, modeCount), 0),
       taperSteps: steps.reduce((sum, n, p) => sum + (isGuide(pieces[p]!) ? 0 : n), 0),
       sections: chain.guides.length,
@@ -107,20 +108,36 @@ function solvedAt({ memory, pieces, level, options, share }: Task): {
       apertureError,
       crossPolarErrorDb: 20 * Math.log10(Math.max(apertureError, 1e-15)),
       reflectionErrors,
-      rule: tapered
-        ? "A quarter of what extrapolation from half as many modes and half as many taper steps adds to the finest solution."
-        : "The change of the result when two functions fewer stand at every edge of the metal.",
+      rule: tapers
+        ? "A quarter (S11) or a sixth (aperture) of what extrapolation from fewer modes and half as many steps in the tapers adds to the finest solution, and all of what it adds for the edges of the metal."
+        : "What extrapolation from two functions fewer at every edge of the metal adds to the finest solution.",
     },
   };
 }
 
 /** Listed modes have a cutoff up to this multiple of the highest frequency: the next ones add below −80 dB. */
-const listedBelow = 4;
+const listedBelow = { edge: 4, taper: 5.5 };
 
 function pairCount({ modePairs }: BandOptions, pieces: Piece[], frequencies: number[]): number {
   if (modePairs !== undefined) return requireInteger("bandAnalysis: modePairs", modePairs, { min: 1, max: 200 });
   const ka = (2 * Math.PI * Math.max(...frequencies) * pieces.at(-1)!.endRadius) / speedOfLight;
-  return Math.max(5, Math.ceil((listedBelow * ka) / Math.PI));
+  return Math.max(5, Math.ceil(((isGuide(pieces.at(-1)!) ? listedBelow.edge : listedBelow.taper) * ka) / Math.PI));
+}
+
+/** Share of a taper's modes whose amplitudes at its end, extrapolated, are good to a few percent of themselves. */
+const trustedShare = 0.5;
+
+function listedAmplitudes(outgoing: ComplexVector, last: Piece, taperModes: number, pairs: number): ComplexVector {
+  const count = 2 * pairs;
+  const trusted = 2 * Math.floor((trustedShare * taperModes) / 2);
+  if (!isGuide(last) && trusted >= 4 && trusted < count) {
+    const angle = Math.atan((last.endRadius - last.startRadius) / last.length);
+    return continuedTail(outgoing, { angle, trusted, count });
+  }
+  const amplitudes = complexVector(count);
+  amplitudes.re.set(outgoing.re.subarray(0, count));
+  amplitudes.im.set(outgoing.im.subarray(0, count));
+  return amplitudes;
 }
 
 interface Parts {
@@ -137,9 +154,7 @@ function assembled({ pieces, frequencies, pairs, refined, convergence }: Parts):
   const apertureModes = refined.map(({ answer: { reflected, outgoing } }, f): ApertureModes => {
     s11.re[f] = reflected.re[0]!;
     s11.im[f] = reflected.im[0]!;
-    const amplitudes = complexVector(2 * pairs);
-    amplitudes.re.set(outgoing.re.subarray(0, 2 * pairs));
-    amplitudes.im.set(outgoing.im.subarray(0, 2 * pairs));
+    const amplitudes = listedAmplitudes(outgoing, pieces.at(-1)!, convergence.taperModes, pairs);
     return { frequency: frequencies[f]!, radius, modePairs: pairs, amplitudes, warnings: [] };
   });
   const powerBalance = refined.map(({ answer }) => answer.powerError);

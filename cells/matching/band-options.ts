@@ -15,7 +15,7 @@ export interface BandOptions {
   modePairs?: number;
   /** this fineness and no other, whatever the error; what is left out is as at the first level */
   level?: Partial<Level>;
-  /** steps of every taper, instead of the level's rule */
+  /** steps of every taper, even, instead of the level's rule */
   taperSteps?: number;
 }
 
@@ -33,6 +33,9 @@ export function wantedErrors({ reflectionError = 1e-3, crossPolarErrorDb = -50 }
 
 export function plannedLevels({ level, taperSteps: steps }: BandOptions): readonly Level[] {
   if (steps !== undefined) requireInteger("bandAnalysis: taperSteps", steps, { min: 2, max: 2000 });
+  if (steps !== undefined && steps % 2 !== 0) {
+    throw new RangeError(`bandAnalysis: taperSteps must be even; got ${steps}`);
+  }
   if (!level) return levels;
   const only = { ...levels[0]!, ...level };
   requireInteger("bandAnalysis: level.edgeFunctions", only.edgeFunctions, { min: 5, max: 31 });

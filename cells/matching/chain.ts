@@ -81,8 +81,7 @@ export function chainOf(pieces: Piece[], fineness: Fineness): Chain {
   const apertures = smooth.map((isSmooth, i): Aperture => {
     if (isSmooth) return { kind: "smooth", count: fineness.modeCount };
     const [a, b] = [guides[i]!.radius, guides[i + 1]!.radius];
-    const shallow = Math.min(a, b) > shallowAbove * Math.max(a, b);
-    return shallow
+    return isShallow(a, b)
       ? { kind: "step", count: fineness.modeCount }
       : { kind: "edge", count: edgeFunctionsAt(Math.min(a, b), fineness) };
   });
@@ -91,6 +90,13 @@ export function chainOf(pieces: Piece[], fineness: Fineness): Chain {
     for (const g of [i, i + 1]) raiseModeCount(guides[g]!, aperture, small, g === 0 || g === guides.length - 1);
   });
   return { guides, apertures };
+}
+
+const isShallow = (a: number, b: number): boolean => Math.min(a, b) > shallowAbove * Math.max(a, b);
+
+/** Whether any step of the metal is deep enough for edge functions. */
+export function hasEdges(pieces: Piece[]): boolean {
+  return pieces.some((piece, p) => p > 0 && !isShallow(pieces[p - 1]!.endRadius, piece.startRadius));
 }
 
 /** Travelling modes for which the level's number of functions is meant: those of an aperture three wavelengths wide. */

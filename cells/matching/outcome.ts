@@ -7,14 +7,18 @@ import { guardedGammaSquared, matchedAdmittance } from "./line.ts";
 import { isTE, type ModeTable } from "./mode-table.ts";
 import { solvePorts } from "./ports.ts";
 
-/** One frequency's answer to a TE11 wave of 1 W at the start of the profile; wave amplitudes, principal √Z. */
+/** One frequency's answer to a wave of 1 W (TE11 unless asked otherwise) at the start of the profile; principal √Z. */
 export interface Answer {
   /** of the throat's modes that travel in the band, TE11 first, at the start of the profile */
   reflected: ComplexVector;
   /** of the modes of the last guide, at the mouth */
   outgoing: ComplexVector;
+  /** of the last aperture's functions, for unit voltage of the wave coming in at the end of the first guide */
+  lastField: ComplexVector;
   /** 1 less all that travelling modes carry away */
   powerError: number;
+  /** largest ratio of a diagonal element to its pivot in the elimination: rounding is magnified by up to so much */
+  cancellation: number;
 }
 
 /** What the elimination leaves for one frequency ("lane"). */
@@ -32,13 +36,16 @@ interface Eliminated {
   inPorts: number;
   outPorts: number;
   portTerm: number;
+  /** mode that comes in */
+  incident: number;
   /** functions of the last aperture in the modes of the last guide */
   right: RealMatrix;
   table: ModeTable;
+  cancellation: number;
 }
 
 export function answerAt(from: Eliminated): Answer {
-  const { k, lane, lanes, x, t, count, first, last, inPorts, outPorts, portTerm, right, table } = from;
+  const { k, lane, lanes, x, t, count, first, last, inPorts, outPorts, portTerm, incident, right, table } = from;
   const size = inPorts + outPorts;
   const impedance = new Float64Array(size * size);
   for (let p = 0; p < size; p++) {
@@ -51,10 +58,11 @@ export function answerAt(from: Eliminated): Answer {
   const loads = Array.from({ length: size }, (_, p) =>
     p < outPorts ? matched(last, p) : matched(first, p - outPorts),
   );
-  const { voltage, current } = solvePorts(impedance, loads, outPorts, portTerm);
-  const drive = loads[outPorts]!;
+  const { voltage, current } = solvePorts(impedance, loads, outPorts + incident, portTerm);
+  const drive = loads[outPorts + incident]!;
 
   const outgoing = complexVector(last.modeCount);
+  const lastField = complexVector(count);
   for (let p = 0; p < count; p++) {
     let re = 0;
     let im = 0;
@@ -63,6 +71,8 @@ export function answerAt(from: Eliminated): Answer {
       re += value * current.re[q]!;
       im += value * current.im[q]!;
     }
+    lastField.re[p] = re;
+    lastField.im[p] = im;
     for (let n = 0; n < last.modeCount; n++) {
       const share = right.values[n * count + p]!;
       outgoing.re[n]! += share * re;
@@ -70,7 +80,7 @@ export function answerAt(from: Eliminated): Answer {
     }
   }
   let carried = 0;
-  const inward = gammaSquared(first, 0);
+  const inward = gammaSquared(first, incident);
   for (let n = 0; n < last.modeCount; n++) {
     const load = matched(last, n);
     toWave(outgoing, n, load, drive);
@@ -81,18 +91,18 @@ export function answerAt(from: Eliminated): Answer {
   const reflected = complexVector(inPorts);
   for (let n = 0; n < inPorts; n++) {
     const load = loads[outPorts + n]!;
-    reflected.re[n] = voltage.re[outPorts + n]! - (n === 0 ? 1 : 0);
+    reflected.re[n] = voltage.re[outPorts + n]! - (n === incident ? 1 : 0);
     reflected.im[n] = voltage.im[outPorts + n]!;
     toWave(reflected, n, load, drive);
     if (load.im > 0) carried += reflected.re[n]! ** 2 + reflected.im[n]! ** 2;
     travel(reflected, n, inward, first.length);
     travel(reflected, n, gammaSquared(first, n), first.length);
   }
-  return { reflected, outgoing, powerError: 1 - carried };
+  return { reflected, outgoing, lastField, powerError: 1 - carried, cancellation: from.cancellation };
 }
 
 /** A mode's voltage for unit voltage of the wave coming in → its wave amplitude for one of unit amplitude: × √(Z_in/Z). */
-function toWave(vector: ComplexVector, n: number, load: Complex, drive: Complex): void {
+export function toWave(vector: ComplexVector, n: number, load: Complex, drive: Complex): void {
   // Z = jη0/y: real for a travelling mode, +j or −j times something else, whose principal root is turned by ±π/4.
   const size = Math.sqrt(Math.hypot(load.re, load.im) / drive.im);
   const turn = load.im > 0 ? 0 : load.re > 0 ? -Math.PI / 4 : Math.PI / 4;

@@ -1,9 +1,9 @@
 // How fine a horn is divided, what coarser solutions tell of the error, and what they add to the answer.
 //
-// Three sources of error, each seen by solving again with less: functions at the edges of steps (they converge faster than
-// any power), modes in tapers (error ∝ 1/N), steps of tapers (error ∝ h²). The known powers are used to extrapolate.
+// Three sources of error, each seen by solving again with less: functions at the edges of steps, modes in tapers, steps of
+// tapers. How each error falls is known, and is used to extrapolate.
 
-import { type ComplexVector, complexVector } from "../math/complex.ts";
+import type { ComplexVector } from "../math/complex.ts";
 import type { Fineness } from "./chain.ts";
 import type { Answer } from "./outcome.ts";
 import { isGuide, type Piece } from "./pieces.ts";
@@ -20,9 +20,9 @@ export interface Level {
 
 /** Tried in turn until the wanted error is reached. */
 export const levels: readonly Level[] = [
-  { edgeFunctions: 11, taperModes: 20, stepsPerWavelength: 25 },
-  { edgeFunctions: 15, taperModes: 32, stepsPerWavelength: 40 },
-  { edgeFunctions: 19, taperModes: 48, stepsPerWavelength: 60 },
+  { edgeFunctions: 11, taperModes: 20, stepsPerWavelength: 20 },
+  { edgeFunctions: 15, taperModes: 32, stepsPerWavelength: 32 },
+  { edgeFunctions: 19, taperModes: 48, stepsPerWavelength: 48 },
 ];
 
 /** Steps of each piece at a level; a steep or wide-ranging taper also gets enough for its radius to change little in each. */
@@ -36,17 +36,62 @@ export function taperSteps(pieces: Piece[], stepsPerWavelength: number, waveleng
   });
 }
 
-/** The solutions of one level, finest first. Without tapers there are two: all, and fewer functions. */
-export function solutionsOf(
+/** Solutions of one level, by what each has less of than the finest. */
+export type Role = "finest" | "halfSteps" | "fewerModes" | "fewerModesHalfSteps" | "fewerFunctions";
+
+export interface PlannedSolution {
+  role: Role;
+  fineness: Fineness;
+  /** in the extrapolated answer; all together 1 */
+  weight: number;
+}
+
+/** Modes of the coarser solution, as a share of the finer one's: the smaller, the cheaper, but the truer the nearer to 1. */
+const fewerModesShare = 0.7;
+
+/** Power of the number of functions with which the error at edges falls (or faster; test/cells/matching/band-analysis). */
+const edgePower = 5;
+
+/**
+ * What to solve at one level, the finest first. Extrapolation follows three laws: steps h² (the staircase is symmetric),
+ * modes 1/(N + 1) (what is left out of a taper's wall begins at a cutoff number of π(N + 1)/2), edges 1/P⁵.
+ * @param has what there is of the profile that each concerns
+ */
+export function plannedSolutions(
   { edgeFunctions, taperModes }: Level,
-  pieces: Piece[],
+  has: { tapers: boolean; edges: boolean },
   { steps, highestWaveNumber }: { steps: number[]; highestWaveNumber: number },
-): Fineness[] {
-  const all: Fineness = { edgeFunctions, modeCount: taperModes, sections: steps, highestWaveNumber };
-  const fewerModes = { ...all, modeCount: taperModes / 2 };
+): PlannedSolution[] {
+  const finest: Fineness = { edgeFunctions, modeCount: taperModes, sections: steps, highestWaveNumber };
   const halfSteps = steps.map((n) => Math.max(1, n / 2));
-  if (pieces.every(isGuide)) return [all, { ...fewerModes, edgeFunctions: edgeFunctions - 2 }];
-  return [all, fewerModes, { ...fewerModes, edgeFunctions: edgeFunctions - 2, sections: halfSteps }];
+  const fewerModes = 2 * Math.round((taperModes * fewerModesShare) / 2);
+  const edgeWeight = 1 / ((edgeFunctions / (edgeFunctions - 2)) ** edgePower - 1);
+  const fewerFunctions = { ...finest, edgeFunctions: edgeFunctions - 2, modeCount: fewerModes };
+  if (!has.tapers) {
+    return [
+      { role: "finest", fineness: finest, weight: 1 + edgeWeight },
+      { role: "fewerFunctions", fineness: fewerFunctions, weight: -edgeWeight },
+    ];
+  }
+  const modeWeight = (fewerModes + 1) / (taperModes - fewerModes);
+  const plan: PlannedSolution[] = [
+    { role: "finest", fineness: finest, weight: (4 / 3) * (1 + modeWeight) },
+    { role: "halfSteps", fineness: { ...finest, sections: halfSteps }, weight: (-1 / 3) * (1 + modeWeight) },
+    { role: "fewerModes", fineness: { ...finest, modeCount: fewerModes }, weight: (-4 / 3) * modeWeight },
+    {
+      role: "fewerModesHalfSteps",
+      fineness: { ...finest, modeCount: fewerModes, sections: halfSteps },
+      weight: (1 / 3) * modeWeight + (has.edges ? edgeWeight : 0),
+    },
+  ];
+  if (has.edges) {
+    plan.push({
+      role: "fewerFunctions",
+      fineness: { ...fewerFunctions, sections: halfSteps },
+      weight: -edgeWeight,
+    });
+  }
+  return plan;
 }
 
 /** A solution and its estimated error at one frequency. */
@@ -67,22 +112,36 @@ export interface Travelling {
 /** Corrections larger than this are no small errors, and following their power law would mislead. */
 const mostExtrapolated = 0.05;
 
+/** Share of a taper's correction that is left as its error: at most 0.13 and 0.04 on listed cones and dual-mode horns. */
+const leftOfTaper = { reflection: 1 / 4, aperture: 1 / 6 };
+
 /**
- * Without tapers: the finest solution; its error estimated by the whole change from the coarser one (the true one is many
- * times less). With tapers: the finest, plus what 1/N and h² leave out; estimated by a quarter of that
- * (the true error was 0.04–0.27 of it on cones and dual-mode horns, test/cells/matching/band-analysis).
+ * The extrapolated answer at one frequency and its error: a share of what extrapolation in the tapers adds, and all of what it
+ * adds for the edges. The true error was below on every listed horn (test/cells/matching/band-analysis).
  */
-export function refine(solutions: Answer[], travelling: Travelling): Refined {
-  const [finest, fewer, coarsest] = solutions as [Answer, Answer, Answer | undefined];
-  if (!coarsest) {
-    return { answer: finest, ...difference(finest, fewer, travelling.mouth) };
-  }
-  const byModes = difference(finest, fewer, travelling.mouth);
-  const bySteps = difference(fewer, coarsest, travelling.mouth);
-  const reflectionError = (byModes.reflectionError + bySteps.reflectionError / 3) / 4;
-  const apertureError = (byModes.apertureError + bySteps.apertureError / 3) / 4;
-  const correction = 4 * Math.hypot(reflectionError, apertureError);
-  const answer = correction < mostExtrapolated ? extrapolated(finest, fewer, coarsest, travelling) : finest;
+export function refine(plan: PlannedSolution[], solutions: Answer[], travelling: Travelling): Refined {
+  const finest = solutions[0]!;
+  const by = (role: Role): Answer | undefined => solutions[plan.findIndex((planned) => planned.role === role)];
+  const weightOf = (role: Role): number => Math.abs(plan.find((planned) => planned.role === role)?.weight ?? 0);
+  let reflectionError = 0;
+  let apertureError = 0;
+  const add = (
+    fine: Answer | undefined,
+    coarse: Answer | undefined,
+    weight: number,
+    left: { reflection: number; aperture: number },
+  ): void => {
+    if (!fine || !coarse) return;
+    const change = difference(fine, coarse, travelling.mouth);
+    reflectionError += weight * left.reflection * change.reflectionError;
+    apertureError += weight * left.aperture * change.apertureError;
+  };
+  add(finest, by("fewerModes"), 0.75 * weightOf("fewerModes"), leftOfTaper);
+  add(finest, by("halfSteps"), 1 / 3, leftOfTaper);
+  const all = { reflection: 1, aperture: 1 };
+  add(by("fewerModesHalfSteps") ?? finest, by("fewerFunctions"), weightOf("fewerFunctions"), all);
+  const small = Math.hypot(reflectionError, apertureError) < mostExtrapolated;
+  const answer = small ? extrapolated(plan, solutions, travelling) : finest;
   return { answer, reflectionError, apertureError };
 }
 
@@ -98,17 +157,18 @@ function difference(a: Answer, b: Answer, travelling: number): { reflectionError
 }
 
 /**
- * finest + (finest − fewer) + (fewer − coarsest)/3, mode by mode; modes that the coarser ones lack stay as they are. Then
+ * The weighted sum of the solutions, mode by mode; modes that the others lack stay as the finest has them. Then
  * scaled to the power that comes in: extrapolating amplitudes leaves it by the square of the correction.
  */
-function extrapolated(finest: Answer, fewer: Answer, coarsest: Answer, { throat, mouth }: Travelling): Answer {
+function extrapolated(plan: PlannedSolution[], solutions: Answer[], { throat, mouth }: Travelling): Answer {
+  const finest = solutions[0]!;
   const extend = (pick: (answer: Answer) => ComplexVector): ComplexVector => {
-    const [a, b, c] = [pick(finest), pick(fewer), pick(coarsest)];
-    const out = complexVector(a.re.length);
-    const known = Math.min(b.re.length, c.re.length);
+    const whole = pick(finest);
+    const out: ComplexVector = { re: whole.re.slice(), im: whole.im.slice() };
+    const known = Math.min(...solutions.map((answer) => pick(answer).re.length));
     for (const part of ["re", "im"] as const) {
-      for (let n = 0; n < out.re.length; n++) {
-        out[part][n] = n < known ? 2 * a[part][n]! - b[part][n]! + (b[part][n]! - c[part][n]!) / 3 : a[part][n]!;
+      for (let n = 0; n < known; n++) {
+        out[part][n] = solutions.reduce((sum, answer, i) => sum + plan[i]!.weight * pick(answer)[part][n]!, 0);
       }
     }
     return out;
@@ -122,7 +182,7 @@ function extrapolated(finest: Answer, fewer: Answer, coarsest: Answer, { throat,
       im[n]! *= scale;
     }
   }
-  return { reflected, outgoing, powerError: finest.powerError };
+  return { ...finest, reflected, outgoing };
 }
 
 function power({ re, im }: ComplexVector, count: number): number {

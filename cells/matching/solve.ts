@@ -12,11 +12,12 @@ import { type Prepared, sweep } from "./sweep.ts";
 /** Frequencies solved side by side: their matrices stay in the processor's nearest cache. */
 const lanes = 8;
 
-/** Power that must not be missing: the reduction is redone beyond it. */
+/** Power that must not be missing, and rounding that must not be magnified more: the frequency is solved again beyond. */
 const acceptedPowerError = 1e-10;
+const acceptedCancellation = 1e7;
 
-/** Real admittances given to the ports inside the reduction, tried in turn: each moves its resonances elsewhere. */
-const portTerms = [0, 0.83, -1.37, 2.9];
+/** Real admittances given to the ports inside the elimination, tried in turn: each moves its resonances elsewhere. */
+const otherPortTerms = [-1.37, 0.19, 2.9, -0.41];
 
 /** Everything of a horn that doesn't depend on the single frequency. */
 export function prepare(memory: Memory, pieces: Piece[], fineness: Fineness, band: WaveBand): Prepared {
@@ -33,7 +34,7 @@ export function bandOf(frequencies: number[]): WaveBand {
 
 /**
  * Answers at the frequencies, in order. The real form loses digits near a resonance of the horn closed by its port terms;
- * the power balance shows it, and another term there has none.
+ * the pivots show it, and another term there has none.
  */
 export function solveBand(prepared: Prepared, frequencies: number[], progress?: (share: number) => void): Answer[] {
   const answers: Answer[] = [];
@@ -47,17 +48,17 @@ export function solveBand(prepared: Prepared, frequencies: number[], progress?: 
   return answers;
 }
 
-const isSound = ({ powerError, outgoing }: Answer): boolean =>
-  Math.abs(powerError) <= acceptedPowerError && isFiniteVector(outgoing);
+const isSound = ({ powerError, cancellation, outgoing }: Answer): boolean =>
+  Math.abs(powerError) <= acceptedPowerError && cancellation <= acceptedCancellation && isFiniteVector(outgoing);
 
 const isFiniteVector = ({ re, im }: ComplexVector): boolean => re.every(Number.isFinite) && im.every(Number.isFinite);
 
 function soundest(prepared: Prepared, frequency: number, first: Answer): Answer {
   let best = first;
-  for (const term of portTerms.slice(1)) {
-    const [again] = sweep(prepared, [frequency], term);
+  for (const term of otherPortTerms) {
+    const [again] = sweep(prepared, [frequency], { portTerm: term });
     if (isSound(again!)) return again!;
-    if (!(Math.abs(best.powerError) <= Math.abs(again!.powerError))) best = again!;
+    if (!(best.cancellation <= again!.cancellation)) best = again!;
   }
   return best;
 }

@@ -23,6 +23,12 @@ export interface Prepared {
   table: ModeTable;
 }
 
+/**
+ * Of the size of a travelling mode's admittance: without it a horn of small steps would be nearly singular inside. Not a round
+ * number, so that no symmetric horn meets a resonance.
+ */
+const defaultPortTerm = 0.73;
+
 /** Modes that travel at the highest wave number. */
 export function portCount({ radius, modeCount }: Guide, highest: number, table: ModeTable): number {
   let count = 0;
@@ -30,10 +36,18 @@ export function portCount({ radius, modeCount }: Guide, highest: number, table: 
   return count;
 }
 
-/**
- * @param portTerm a real admittance that the ports hold inside the elimination and not outside: moves its resonances
- */
-export function sweep(prepared: Prepared, frequencies: number[], portTerm = 0): Answer[] {
+export interface SweepOptions {
+  /** a real admittance that the ports hold inside the elimination and not outside: moves its resonances */
+  portTerm?: number;
+  /** index of the mode that comes in, one that travels in the throat; default 0, TE11 */
+  incident?: number;
+}
+
+export function sweep(
+  prepared: Prepared,
+  frequencies: number[],
+  { portTerm = defaultPortTerm, incident = 0 }: SweepOptions = {},
+): Answer[] {
   const { chain, bases, sections, band, table } = prepared;
   const { guides } = chain;
   const lanes = frequencies.length;
@@ -43,6 +57,8 @@ export function sweep(prepared: Prepared, frequencies: number[], portTerm = 0): 
   const last = guides.at(-1)!;
   const inPorts = Math.max(1, portCount(first, band.high, table));
   const outPorts = portCount(last, band.high, table);
+
+  const cancellation = new Float64Array(lanes);
 
   // Unknowns of the block at hand: its aperture's functions. `t` holds what eliminating it leaves: the next aperture's
   // block, then the throat's ports, which every block still sees.
@@ -78,11 +94,29 @@ export function sweep(prepared: Prepared, frequencies: number[], portTerm = 0): 
     }
     if (before) carryPorts(before, count, x, t, nextCount, size);
     else setPortColumns(x, size, nextCount, bases[0]!.left.modes, inPorts);
+    const diagonal = diagonalOf(s, count);
     eliminate(s, x, t, count, size, lanes);
+    noteCancellation(diagonal, s, count);
     if (!next) {
       solveUpper(s, x, count, size, lanes);
       return waveNumbers.map((k, lane) =>
-        answerAt({ k, lane, lanes, x, t, count, first, last, inPorts, outPorts, portTerm, right: right.modes, table }),
+        answerAt({
+          k,
+          lane,
+          lanes,
+          x,
+          t,
+          count,
+          first,
+          last,
+          inPorts,
+          outPorts,
+          portTerm,
+          incident,
+          right: right.modes,
+          table,
+          cancellation: cancellation[lane]!,
+        }),
       );
     }
     s = new Float64Array(nextCount * nextCount * lanes);
@@ -94,6 +128,25 @@ export function sweep(prepared: Prepared, frequencies: number[], portTerm = 0): 
     count = nextCount;
   }
   throw new Error("sweep: a chain must have an aperture");
+
+  function diagonalOf(s: Float64Array, count: number): Float64Array {
+    const out = new Float64Array(count * lanes);
+    for (let p = 0; p < count; p++) {
+      const from = (p * count + p) * lanes;
+      out.set(s.subarray(from, from + lanes), p * lanes);
+    }
+    return out;
+  }
+
+  /** How much larger a diagonal element was than the pivot that elimination has left of it: so many digits are gone. */
+  function noteCancellation(before: Float64Array, s: Float64Array, count: number): void {
+    for (let p = 0; p < count; p++) {
+      for (let l = 0; l < lanes; l++) {
+        const ratio = Math.abs(before[p * lanes + l]! * s[(p * count + p) * lanes + l]!);
+        if (!(ratio <= cancellation[l]!)) cancellation[l] = ratio;
+      }
+    }
+  }
 
   function nodeWeightLanes(): Float64Array[] {
     const perLane = waveNumbers.map((k) => nodeWeights(band, k));
