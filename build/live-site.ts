@@ -19,7 +19,7 @@ export interface LiveSite {
   close(): Promise<void>;
 }
 
-const STYLES = ["runtime/page/page.css", "runtime/server/problems.css"];
+const STYLES = ["runtime/page/page.css", "runtime/page/style/writing.css", "runtime/server/problems.css"];
 
 /** Versions of a script that stay available for pages which are just loading them. */
 const KEPT_VERSIONS = 8;

@@ -26,7 +26,7 @@ import {
   smoothHorn,
   tradeTable,
 } from "../cells/index.ts";
-import { caution, figure, given, head, lead, margin, note, show, table } from "../runtime/index.ts";
+import { caution, figure, given, head, lead, margin, note, rationale, restsOn, show, table } from "../runtime/index.ts";
 
 export const dishDiameter = given("2.4 m", {
   label: "Dish diameter",
@@ -320,6 +320,23 @@ export const tradeView = table({
   ...tradeSheet(trade),
   caption: "At band centre, with the worst over the band beneath.",
   basis: "closed form, 21 frequencies",
+});
+
+export const feedChosen = rationale(tradeView, {
+  decision: "Build the corrugated horn.",
+  chosen: "corrugated",
+  author: "J. Pallister",
+  date: "2026-11-27",
+  reasons: note`It alone keeps the cross-polar below ${show(crossPolarLimit, "dB", 0)} over the whole band; the dual-mode horn
+does so only near the middle of it. The slots cost a day on the lathe, which the second polarisation repays.`,
+  numbers: [
+    restsOn("Gain, worst", trade.rows[2]?.worst.gainDbi ?? null, { agreed: "44.71 dBi", mayMove: "0.10 dBi" }),
+    restsOn("Dual-mode cross-polar, worst", trade.rows[1]?.worst.crossPolarPeakDb ?? null, {
+      agreed: "-23.4 dB",
+      mayMove: "1.0 dB",
+    }),
+    restsOn("Length", trade.rows[2]?.lengthM ?? null, { agreed: "96.6 mm", mayMove: "5 mm" }),
+  ],
 });
 
 const inDoubt = bands.flatMap(({ kind, warnings }) => warnings.map(({ text }) => `**${kindNames[kind]}.** ${text}`));

@@ -2,6 +2,7 @@
 
 import type { CellView } from "../study.ts";
 import { codeToggle } from "./code.ts";
+import type { Writing } from "./desk/writing.ts";
 import { html, nameId, setAttribute, showWhen } from "./dom.ts";
 import type { PageContext } from "./options.ts";
 import { rootsInState } from "./readers.ts";
@@ -22,6 +23,30 @@ function button(document: Document, act: () => void): HTMLButtonElement {
   const element = html(document, "button", { type: "button", hidden: true });
   element.addEventListener("click", act);
   return element;
+}
+
+/** What can be written beside a result: a note after it, a rationale in its margin. */
+function writeButtons(context: PageContext, writing: Writing, cell: () => CellView | undefined): HTMLElement {
+  const { document } = context;
+  const one = (label: string, act: (of: CellView) => void) => {
+    const element = html(document, "button", { type: "button" }, label);
+    element.addEventListener("click", () => {
+      const of = cell();
+      if (of) act(of);
+    });
+    return element;
+  };
+  const note = one("add a note", writing.addNote);
+  // a cell without a name of its own has nothing for a rationale to stand beside
+  const named = /^[A-Za-z_$]/.test(cell()?.name ?? "") && !(cell()?.name ?? "").includes(" ");
+  return html(
+    document,
+    "p",
+    { class: "write" },
+    note,
+    named && " ",
+    named && one("write a rationale", writing.addRationale),
+  );
 }
 
 export function footLine(context: PageContext, key: string): { element: HTMLElement; update(entry: FootEntry): void } {
@@ -50,6 +75,7 @@ export function footLine(context: PageContext, key: string): { element: HTMLElem
     told,
   );
   const code = codeToggle(context, id);
+  let write: HTMLElement | undefined;
   const element = html(document, "div", { class: "foot" }, line, words, code.element);
 
   return {
@@ -77,6 +103,10 @@ export function footLine(context: PageContext, key: string): { element: HTMLElem
       showWhen(words, Boolean(entry.words));
       told.textContent = typeset(entry.words ?? "");
       code.update(entry.code);
+      if (context.writing && !write) {
+        write = writeButtons(context, context.writing, () => now?.cell);
+        element.append(write, context.writing.hostFor(entry.cell));
+      }
       const offered = live ? (entry.saves ?? []) : [];
       const labels = offered.map((save) => save.describes).join("|");
       if (labels !== savesShown) {

@@ -56,7 +56,7 @@ export function frame(context: PageContext, cell: CellView, kind: "figure" | "ta
             : html(document, tag, { class: "title" }, ...phrase(document, framed.title));
         caption.replaceChildren(...phrase(document, framed.caption ?? ""));
         (title ?? caption).append(...letterMarks(document, notes));
-        notesNow = notes.map((note) => marginNote(document, note));
+        notesNow = notes.map((note) => marginNote(context, note));
       }
       setAttribute(element, "data-state", entry.cell.state);
       foot.update({ ...framed.foot, cell: entry.cell, code: entry.code });

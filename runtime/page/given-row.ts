@@ -76,7 +76,7 @@ export function givenRow(context: PageContext, first: GivenView): GivenRow {
       signature = next;
       marks.replaceChildren(...letterMarks(document, notes));
       element.querySelector(".notes")?.remove();
-      if (notes.length > 0) element.prepend(notesCell(document, notes));
+      if (notes.length > 0) element.prepend(notesCell(context, notes));
     },
   };
 }

@@ -16,7 +16,7 @@ function differSentence(count: number): string {
 
 /** The line below the givens: keep, go back, and whatever else the page was given to do. */
 function actionLine(context: PageContext): { element: HTMLElement; update(givens: readonly GivenView[]): void } {
-  const { document, study, options } = context;
+  const { document, study, options, writing } = context;
   const said = html(document, "span", { class: "said", role: "status" });
   const changed = () => study.givens.filter(differs);
   const act = async (work: () => unknown) => {
@@ -34,21 +34,19 @@ function actionLine(context: PageContext): { element: HTMLElement; update(givens
     });
     return { element, needsChange };
   };
-  const keep = options.keep;
+  const { keep } = options;
+  const kept = keep && (() => keep(Object.fromEntries(changed().map((given) => [given.name, given.text]))));
+  const keeps = writing ? writing.keepGivens : kept;
   const buttons = [
-    ...(keep
-      ? [
-          button(
-            "Keep these values",
-            () => keep(Object.fromEntries(changed().map((given) => [given.name, given.text]))),
-            true,
-          ),
-        ]
-      : []),
+    ...(keeps ? [button("Keep these values", keeps, true)] : []),
     button("Back to the values in the file", () => study.reset(), true),
+    ...(writing
+      ? [button("Undo the last write", writing.undo, false), button("Fork this study", () => writing.fork(), false)]
+      : []),
     ...(options.actions ?? []).map((action) => button(action.label, action.act, false)),
   ];
-  const element = html(document, "div", { class: "actions" }, ...buttons.map((each) => each.element), said);
+  const line = html(document, "div", { class: "actions" }, ...buttons.map((each) => each.element), said);
+  const element = writing ? html(document, "div", {}, line, writing.host) : line;
   let count = -1;
   return {
     element,
@@ -111,7 +109,7 @@ export function givensBlock(context: PageContext): Block<GivensEntry> {
       holdChildren(body, elements);
       const others = entry.notes.filter((note) => note.row === undefined);
       const next = noteSignature(others);
-      if (next !== signature) loose = others.map((note) => marginNote(document, note));
+      if (next !== signature) loose = others.map((note) => marginNote(context, note));
       signature = next;
       actions?.update(study.givens);
       holdChildren(element, [...loose, table, ...(actions && entry.last ? [actions.element] : [])]);

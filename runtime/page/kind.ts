@@ -6,7 +6,7 @@ import type { CellView } from "../study.ts";
 export type ShownKind = Shown["shows"];
 
 const spoken =
-  /^\s*(?:export\s+)?(?:const\s+[\w$]+\s*(?::[^=]+)?=\s*)?(?:await\s+)?(head|note|lead|margin|caution|figure|table)\b/;
+  /^\s*(?:export\s+)?(?:const\s+[\w$]+\s*(?::[^=]+)?=\s*)?(?:await\s+)?(head|note|lead|margin|caution|figure|table|rationale)\b/;
 
 /**
  * The kind of thing a cell shows, or undefined for a plain value. Without a value (working for the first time, failed)

@@ -4,8 +4,10 @@
 import type { MarginMark } from "../shown.ts";
 import { html } from "./dom.ts";
 import { failureLine } from "./failure.ts";
+import type { PageContext } from "./options.ts";
 import type { PlannedNote } from "./plan-entries.ts";
 import { prose } from "./prose.ts";
+import { rationaleParts } from "./rationale-note.ts";
 import { tagProse } from "./state-mark.ts";
 
 const words: Record<MarginMark, string> = {
@@ -36,23 +38,26 @@ export function letterMarks(document: Document, notes: readonly PlannedNote[]): 
 /** What a note looks like now, as one string: a part with notes is made again when it changes. */
 export function noteSignature(notes: readonly PlannedNote[]): string {
   return JSON.stringify(
-    notes.map(({ cell, letter, mark, row, markdown }) => [
+    notes.map(({ cell, letter, mark, row, markdown, rationale }) => [
       cell.name,
       cell.state,
       letter,
       mark,
       row,
       markdown,
+      rationale,
       cell.failure?.reason,
     ]),
   );
 }
 
 /** The note itself. */
-export function marginNote(document: Document, note: PlannedNote): HTMLElement {
+export function marginNote(context: PageContext, note: PlannedNote): HTMLElement {
+  const { document } = context;
   const word = note.cell.state === "failed" ? "Note failed" : (words[note.mark] ?? words.reading);
   const body = html(document, "div", { class: "saying" });
   if (note.cell.state === "failed") body.append(failureLine(document, note.cell));
+  else if (note.rationale) body.append(...rationaleParts(context, note.cell.name, note.rationale));
   else body.append(...prose(document, note.markdown, 4));
   tagProse(document, body, note.cell);
   const letter = note.letter ? html(document, "span", { class: "letter" }, note.letter) : undefined;

@@ -72,6 +72,7 @@ export function mountStudy(root: Element, study: Study, options: PageOptions = {
     document,
     study,
     options,
+    ...(options.write ? { writing: options.write(document, study) } : {}),
     live: true,
     still: false,
     width: () => width,

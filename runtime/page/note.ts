@@ -43,7 +43,7 @@ function wordsBlock<Entry extends Told>(
       body.replaceChildren(...say(entry));
       (body.lastElementChild ?? body).append(...letterMarks(document, notes));
       tagProse(document, body, cell);
-      holdChildren(element, [...notes.map((note) => marginNote(document, note)), body]);
+      holdChildren(element, [...notes.map((note) => marginNote(context, note)), body]);
     },
   };
 }

@@ -1,6 +1,7 @@
 // What a page can be told, and what its parts share.
 
 import type { CellView, Study } from "../study.ts";
+import type { Writing } from "./desk/writing.ts";
 
 /** A quiet button among the actions of the page. */
 export interface PageAction {
@@ -16,6 +17,8 @@ export interface PageOptions {
   imprint?: string;
   /** writes the givens' texts that differ into the file; gives "Keep these values" its place. May return a sentence. */
   keep?: (texts: Record<string, string>) => unknown;
+  /** `createWriting` with a desk, where there is a file behind the page: values can be kept, rationales written, studies forked */
+  write?: (document: Document, study: Study) => Writing;
   /** further actions below the givens, such as forking */
   actions?: PageAction[];
   /** opens a cell's source for editing in `host`, below its code; gives "edit" its place */
@@ -29,6 +32,8 @@ export interface PageContext {
   readonly document: Document;
   readonly study: Study;
   readonly options: PageOptions;
+  /** what the page can write, where it has a desk */
+  readonly writing?: Writing;
   /** true: a script is behind the page; false: paper, or the first paint of a file */
   readonly live: boolean;
   /** givens as text, not as controls */

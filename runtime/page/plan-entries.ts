@@ -1,6 +1,6 @@
 // What a plan of the page is made of.
 
-import type { MarginMark } from "../shown.ts";
+import type { MarginMark, Rationale } from "../shown.ts";
 import type { CellView, GivenView } from "../study.ts";
 
 export interface PlannedNote {
@@ -11,6 +11,7 @@ export interface PlannedNote {
   /** row of the table, or name of the given, that it stands beside */
   row?: string;
   markdown: string;
+  rationale?: Rationale;
 }
 
 export interface ShownEntry {

@@ -1,6 +1,6 @@
 // Which thing a margin note stands beside, and the letter both carry.
 
-import type { MarginNote, Table } from "../shown.ts";
+import type { MarginNote, Rationale, Table } from "../shown.ts";
 import type { CellView, Study } from "../study.ts";
 import type { Entry, Plan, PlannedNote } from "./plan-entries.ts";
 import { firstShownReader } from "./readers.ts";
@@ -25,16 +25,16 @@ function rowOrder(entry: Entry, row: string | undefined): number {
 export function placeNotes(
   study: Study,
   plan: Plan,
-  margins: readonly { cell: CellView; note: MarginNote; after?: Entry }[],
+  margins: readonly { cell: CellView; note: MarginNote; rationale?: Rationale; after?: Entry }[],
 ): void {
   const entries = plan.sections.flatMap((section) => section.entries);
   const shows = (name: string) => entries.find((entry) => "cell" in entry && entry.cell.name === name);
   const holding = (name: string) =>
     entries.find((entry) => entry.kind === "givens" && entry.givens.some((given) => given.name === name));
 
-  for (const { cell, note, after } of margins) {
+  for (const { cell, note, rationale, after } of margins) {
     const beside = cell.beside;
-    const planned: PlannedNote = { cell, letter: "", mark: note.mark, markdown: note.markdown };
+    const planned: PlannedNote = { cell, letter: "", mark: note.mark, markdown: note.markdown, rationale };
     if (beside !== undefined && (beside === plan.lead?.name || beside === plan.head?.name)) {
       plan.leadNotes.push(planned);
       continue;

@@ -1,6 +1,6 @@
 // Where everything stands: the study's cells, in source order, as a memorandum of sections with notes beside their things.
 
-import type { MarginNote, Note } from "../shown.ts";
+import type { MarginNote, Note, Rationale } from "../shown.ts";
 import type { CellView, Study } from "../study.ts";
 import { idPart } from "./dom.ts";
 import { headingInSource, shownKind } from "./kind.ts";
@@ -25,7 +25,7 @@ export function planStudy(study: Study): Plan {
   const plan: Plan = { leadNotes: [], sections: [] };
   const givens = new Map(study.givens.map((given) => [given.name, given]));
   const ids = new Map<string, number>();
-  const margins: { cell: CellView; note: MarginNote; after?: Entry }[] = [];
+  const margins: { cell: CellView; note: MarginNote; rationale?: Rationale; after?: Entry }[] = [];
   let built: CellView[] = [];
   let lastGivens: GivensEntry | undefined;
   let last: Entry | undefined;
@@ -65,6 +65,11 @@ export function planStudy(study: Study): Plan {
       const note = cell.value as MarginNote | undefined;
       if (cell.state === "failed" || note?.markdown.trim())
         margins.push({ cell, note: note ?? { shows: "margin", mark: "warning", markdown: "" }, after: last });
+    } else if (kind === "rationale") {
+      const rationale = cell.value as Rationale | undefined;
+      const markdown = rationale?.markdown ?? "";
+      if (rationale || cell.state === "failed")
+        margins.push({ cell, note: { shows: "margin", mark: "rationale", markdown }, rationale, after: last });
     } else {
       const title = kind === "note" ? sectionTitle(cell) : undefined;
       if (title !== undefined) begin(`section ${cell.name}`, title);

@@ -5,7 +5,7 @@ import { placeId } from "./frame.ts";
 import { shownKind } from "./kind.ts";
 import type { PageContext } from "./options.ts";
 import { firstShownReader } from "./readers.ts";
-import { countStates, stateDetail, stateSentence } from "./words.ts";
+import { countStates, rationaleSentence, stateDetail, stateSentence } from "./words.ts";
 
 /** How long a study must rest before its state is spoken, ms. */
 const rest = 1200;
@@ -64,7 +64,7 @@ export function stateNote(context: PageContext): StateNote {
     spoken,
     update() {
       const count = countStates(study.cells);
-      const said = stateSentence(count);
+      const said = [stateSentence(count), rationaleSentence(study.cells)].filter(Boolean).join(" ");
       if (sentence.textContent !== said) sentence.textContent = said;
       detail.textContent = stateDetail(count);
       const place = worst();

@@ -19,8 +19,9 @@ function kindName(kind: string | undefined): string | undefined {
 }
 
 /** The cell of a row that holds the notes beside it, a float in the margin. */
-export function notesCell(document: Document, notes: readonly PlannedNote[]): HTMLElement {
-  return html(document, "td", { class: "notes", role: "cell" }, ...notes.map((note) => marginNote(document, note)));
+export function notesCell(context: PageContext, notes: readonly PlannedNote[]): HTMLElement {
+  const { document } = context;
+  return html(document, "td", { class: "notes", role: "cell" }, ...notes.map((note) => marginNote(context, note)));
 }
 
 function valueCell(document: Document, cell: TableCell, column: Table["columns"][number] | undefined): HTMLElement {
@@ -35,7 +36,8 @@ function valueCell(document: Document, cell: TableCell, column: Table["columns"]
   );
 }
 
-function tableRow(document: Document, table: Table, row: TableRow, notes: readonly PlannedNote[]): HTMLElement {
+function tableRow(context: PageContext, table: Table, row: TableRow, notes: readonly PlannedNote[]): HTMLElement {
+  const { document } = context;
   const label = html(
     document,
     "th",
@@ -59,13 +61,14 @@ function tableRow(document: Document, table: Table, row: TableRow, notes: readon
     document,
     "tr",
     { role: "row", class: row.total ? "total" : undefined, "data-row": row.key },
-    notes.length > 0 ? notesCell(document, notes) : undefined,
+    notes.length > 0 ? notesCell(context, notes) : undefined,
     label,
     ...cells,
   );
 }
 
-function tableElement(document: Document, table: Table, notes: readonly PlannedNote[]): HTMLElement {
+function tableElement(context: PageContext, table: Table, notes: readonly PlannedNote[]): HTMLElement {
+  const { document } = context;
   const besideRow = (row: TableRow) => notes.filter((note) => note.row !== undefined && note.row === row.key);
   const columns = table.columns.map((column) =>
     html(
@@ -90,7 +93,7 @@ function tableElement(document: Document, table: Table, notes: readonly PlannedN
       document,
       "tbody",
       { role: "rowgroup" },
-      ...table.rows.map((row) => tableRow(document, table, row, besideRow(row))),
+      ...table.rows.map((row) => tableRow(context, table, row, besideRow(row))),
     ),
   );
 }
@@ -111,7 +114,7 @@ export function tableBlock(context: PageContext, first: ShownEntry, titleLevel: 
       const notes = noteSignature(rowNotes);
       if (!shown || shown.value !== cell.value || shown.notes !== notes || shown.failed !== failed || failed) {
         if (live) content.style.minHeight = table ? "" : `${content.offsetHeight}px`;
-        content.replaceChildren(table ? tableElement(document, table, rowNotes) : emptyContent(context, cell));
+        content.replaceChildren(table ? tableElement(context, table, rowNotes) : emptyContent(context, cell));
         shown = { value: cell.value, notes, failed };
       }
       const data = table?.data;

@@ -1,5 +1,6 @@
 // Counts and lists in words, for the sentences of the page.
 
+import { isShown, type Rationale } from "../shown.ts";
 import type { CellState, CellView } from "../study.ts";
 
 const small = ["no", "one", "two", "three", "four", "five", "six", "seven", "eight", "nine", "ten", "eleven", "twelve"];
@@ -54,4 +55,23 @@ export function stateDetail(count: StateCount): string {
   if (count.current === total) return "Every number belongs to the values given below.";
   const current = `Of ${total} results ${count.current} ${count.current === 1 ? "is" : "are"} current.`;
   return `${current} Everything printed in black belongs to the values given below.`;
+}
+
+/** What is to be said of the study's rationales, "" when all stand as agreed: "One rationale has moved and two are inherited." */
+export function rationaleSentence(cells: readonly CellView[]): string {
+  const rationales = cells
+    .filter(({ state }) => state !== "failed")
+    .map(({ value }) => value)
+    .filter((value): value is Rationale => isShown(value) && value.shows === "rationale");
+  const moved = rationales.filter(({ numbers }) => numbers.some((number) => number.moved)).length;
+  const inherited = rationales.filter((rationale) => rationale.inherited !== undefined).length;
+  const parts = [
+    ...(moved > 0 ? [`${countWord(moved)} ${moved === 1 ? "rationale has" : "rationales have"} moved`] : []),
+    ...(inherited > 0
+      ? [
+          `${countWord(inherited)}${moved > 0 ? "" : inherited === 1 ? " rationale" : " rationales"} ${inherited === 1 ? "is" : "are"} inherited, not yet confirmed`,
+        ]
+      : []),
+  ];
+  return parts.length === 0 ? "" : `${capital(listWords(parts))}.`;
 }

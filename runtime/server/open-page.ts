@@ -3,20 +3,28 @@
 import { browserSpawn } from "../background/browser.ts";
 import { createBackgroundPool } from "../background/pool.ts";
 import { createStudy } from "../engine.ts";
+import { createWriting } from "../page/desk/writing.ts";
 import { mountStudy } from "../page/mount.ts";
 import { studyValues } from "../plain-values.ts";
-import type { NotebookModule, Study } from "../study.ts";
+import type { CellView, NotebookModule, Study } from "../study.ts";
+import { createDeskClient } from "./desk-client.ts";
 import { followServer } from "./follow-server.ts";
 import type { OpenState } from "./open-state.ts";
 import { problemPanel } from "./problems.ts";
 
 const root = document.getElementById("study")!;
 const first = JSON.parse(document.getElementById("hornbook-open")!.textContent!) as OpenState & { token: string };
+const desk = createDeskClient(first.token);
 const panel = problemPanel(document, root);
 let study: Study | undefined;
 let taken: string | undefined;
 let wanted: OpenState = first;
 let taking: Promise<void> = Promise.resolve();
+
+async function openEditor(cell: CellView, host: HTMLElement, of: Study): Promise<void> {
+  const { openCellEditor } = await import("./cell-editor.ts");
+  openCellEditor(host, cell, of, desk);
+}
 
 async function take(state: OpenState): Promise<void> {
   // The program itself was changed: the page begins again, with the givens in its address.
@@ -34,7 +42,12 @@ async function take(state: OpenState): Promise<void> {
     if (study) study.redefine(version, background);
     else {
       study = createStudy(version, { background });
-      mountStudy(root, study, { program: "Hornbook" });
+      const running = study;
+      mountStudy(root, running, {
+        program: "Hornbook",
+        write: (document, of) => createWriting(document, of, desk),
+        edit: (cell, host) => void openEditor(cell, host, running),
+      });
     }
     taken = url;
   } catch (error) {
