@@ -13,7 +13,7 @@ import type { Memory } from "./memory.ts";
 import { travellingCount } from "./mode-table.ts";
 import { continuedTail } from "./mouth-tail.ts";
 import { isGuide, type Piece, profilePieces } from "./pieces.ts";
-import { type Level, plannedSolutions, type Refined, refine, taperSteps } from "./refinement.ts";
+import { type Level, plannedSolutions, type Refined, refine, steepness, taperSteps } from "./refinement.ts";
 import { bandOf, prepare, solveBand } from "./solve.ts";
 
 /** Plain data: can be sent to and from a worker. */
@@ -53,13 +53,17 @@ export function analyseBand(
     const { reflectionError, apertureError } = convergence;
     attempts.push({ level, reflectionError, apertureError });
     const reached = reflectionError <= wanted.reflection && apertureError <= wanted.aperture;
-    if (!reached && i < plan.length - 1) continue;
+    const excess = Math.max(reflectionError / wanted.reflection, apertureError / wanted.aperture);
+    if (!reached && i < plan.length - 1 && (i === 0 || excess < likelyGain)) continue;
     memory.endCall();
     progress?.(1);
     return assembled({ pieces, frequencies, pairs, refined, convergence: { ...convergence, attempts, reached } });
   }
   throw new Error("bandAnalysis: there is no level of fineness to try");
 }
+
+/** A further level lowers the error about threefold; it is not tried when that can't suffice. */
+const likelyGain = 6;
 
 interface Task {
   memory: Memory;
@@ -79,6 +83,7 @@ function solvedAt({ memory, pieces, level, options, share }: Task): {
   const steps = byRule.map((n, p) => (isGuide(pieces[p]!) ? 1 : (options.taperSteps ?? n)));
   const tapers = !pieces.every(isGuide);
   const edges = hasEdges(pieces);
+  const steep = steepness(pieces);
   const plan = plannedSolutions(level, { tapers, edges }, { steps, highestWaveNumber: band.high });
   const prepared = plan.map(({ fineness }) => prepare(memory, pieces, fineness, band));
   const solved = prepared.map((each, s) => solveBand(each, frequencies, (part) => share((s + part) / prepared.length)));
@@ -86,10 +91,11 @@ function solvedAt({ memory, pieces, level, options, share }: Task): {
   const refined = frequencies.map((frequency, f) => {
     const k = (2 * Math.PI * frequency) / speedOfLight;
     const answers = solved.map((each) => each[f]!);
-    return refine(plan, answers, {
+    const travelling = {
       throat: travellingCount(pieces[0]!.startRadius, k, table),
       mouth: travellingCount(pieces.at(-1)!.endRadius, k, table),
-    });
+    };
+    return refine(plan, answers, { travelling, steep });
   });
   const reflectionErrors = refined.map(({ reflectionError }) => reflectionError);
   const apertureError = Math.max(...refined.map((one) => one.apertureError));
@@ -109,7 +115,7 @@ function solvedAt({ memory, pieces, level, options, share }: Task): {
       crossPolarErrorDb: 20 * Math.log10(Math.max(apertureError, 1e-15)),
       reflectionErrors,
       rule: tapers
-        ? "A quarter (S11) or a sixth (aperture) of what extrapolation from fewer modes and half as many steps in the tapers adds to the finest solution, and all of what it adds for the edges of the metal."
+        ? "Of what extrapolation adds to the finest solution: all for the edges of the metal, in the tapers a share that falls with the number of modes (5/N for S11, 3/N for the aperture, times 1 + slope)."
         : "What extrapolation from two functions fewer at every edge of the metal adds to the finest solution.",
     },
   };

@@ -112,47 +112,75 @@ export interface Travelling {
 /** Corrections larger than this are no small errors, and following their power law would mislead. */
 const mostExtrapolated = 0.05;
 
-/** Share of a taper's correction that is left as its error: at most 0.13 and 0.04 on listed cones and dual-mode horns. */
-const leftOfTaper = { reflection: 1 / 4, aperture: 1 / 6 };
+/**
+ * Share of a taper's correction that is left as its error: so much over the number of modes, times 1 + the tangent of the
+ * steepest angle. On cones of 14° to 77° and the listed horns the error was less (test/cells/matching/band-analysis).
+ */
+const leftOfTaper = { reflection: 5, aperture: 3 };
+
+/** The steepest taper's rise over its length. */
+export function steepness(pieces: Piece[]): number {
+  return pieces.reduce(
+    (most, { startRadius, endRadius, length }) => Math.max(most, Math.abs(endRadius - startRadius) / length),
+    0,
+  );
+}
 
 /**
  * The extrapolated answer at one frequency and its error: a share of what extrapolation in the tapers adds, and all of what it
- * adds for the edges. The true error was below on every listed horn (test/cells/matching/band-analysis).
+ * adds for the edges. Where that is too much to be trusted, the finest solution, and all of it as its error.
+ * @param steep `steepness` of the profile
  */
-export function refine(plan: PlannedSolution[], solutions: Answer[], travelling: Travelling): Refined {
+export function refine(
+  plan: PlannedSolution[],
+  solutions: Answer[],
+  { travelling, steep }: { travelling: Travelling; steep: number },
+): Refined {
   const finest = solutions[0]!;
-  const by = (role: Role): Answer | undefined => solutions[plan.findIndex((planned) => planned.role === role)];
+  const by = (role: Role): Answer => solutions[plan.findIndex((planned) => planned.role === role)] ?? finest;
   const weightOf = (role: Role): number => Math.abs(plan.find((planned) => planned.role === role)?.weight ?? 0);
-  let reflectionError = 0;
-  let apertureError = 0;
-  const add = (
-    fine: Answer | undefined,
-    coarse: Answer | undefined,
-    weight: number,
-    left: { reflection: number; aperture: number },
-  ): void => {
-    if (!fine || !coarse) return;
-    const change = difference(fine, coarse, travelling.mouth);
-    reflectionError += weight * left.reflection * change.reflectionError;
-    apertureError += weight * left.aperture * change.apertureError;
+  const change = (fine: Role, coarse: Role): Change => difference(by(fine), by(coarse), travelling.mouth);
+  const edges = scaled(change("fewerModesHalfSteps", "fewerFunctions"), weightOf("fewerFunctions"));
+  const tapers = sum(
+    scaled(change("finest", "fewerModes"), 0.75 * weightOf("fewerModes")),
+    scaled(change("finest", "halfSteps"), 1 / 3),
+  );
+  const correction = sum(edges, tapers);
+  if (Math.hypot(correction.reflection, correction.aperture) > mostExtrapolated) {
+    return { answer: finest, reflectionError: correction.reflection, apertureError: correction.aperture };
+  }
+  const left = (1 + steep) / plan[0]!.fineness.modeCount;
+  return {
+    answer: extrapolated(plan, solutions, travelling),
+    reflectionError: edges.reflection + Math.min(1, left * leftOfTaper.reflection) * tapers.reflection,
+    apertureError: edges.aperture + Math.min(1, left * leftOfTaper.aperture) * tapers.aperture,
   };
-  add(finest, by("fewerModes"), 0.75 * weightOf("fewerModes"), leftOfTaper);
-  add(finest, by("halfSteps"), 1 / 3, leftOfTaper);
-  const all = { reflection: 1, aperture: 1 };
-  add(by("fewerModesHalfSteps") ?? finest, by("fewerFunctions"), weightOf("fewerFunctions"), all);
-  const small = Math.hypot(reflectionError, apertureError) < mostExtrapolated;
-  const answer = small ? extrapolated(plan, solutions, travelling) : finest;
-  return { answer, reflectionError, apertureError };
 }
 
-function difference(a: Answer, b: Answer, travelling: number): { reflectionError: number; apertureError: number } {
-  let sum = 0;
+/** By how much two answers differ, in the sense of `Refined`. */
+interface Change {
+  reflection: number;
+  aperture: number;
+}
+
+const scaled = ({ reflection, aperture }: Change, by: number): Change => ({
+  reflection: by * reflection,
+  aperture: by * aperture,
+});
+
+const sum = (a: Change, b: Change): Change => ({
+  reflection: a.reflection + b.reflection,
+  aperture: a.aperture + b.aperture,
+});
+
+function difference(a: Answer, b: Answer, travelling: number): Change {
+  let squares = 0;
   for (let n = 0; n < Math.min(travelling, b.outgoing.re.length); n++) {
-    sum += (a.outgoing.re[n]! - b.outgoing.re[n]!) ** 2 + (a.outgoing.im[n]! - b.outgoing.im[n]!) ** 2;
+    squares += (a.outgoing.re[n]! - b.outgoing.re[n]!) ** 2 + (a.outgoing.im[n]! - b.outgoing.im[n]!) ** 2;
   }
   return {
-    reflectionError: Math.hypot(a.reflected.re[0]! - b.reflected.re[0]!, a.reflected.im[0]! - b.reflected.im[0]!),
-    apertureError: Math.sqrt(sum),
+    reflection: Math.hypot(a.reflected.re[0]! - b.reflected.re[0]!, a.reflected.im[0]! - b.reflected.im[0]!),
+    aperture: Math.sqrt(squares),
   };
 }
 
