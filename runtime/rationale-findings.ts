@@ -1,7 +1,7 @@
 // What is to be said of a rationale: that a number it rests on has moved, or that nobody has agreed to it here yet.
 
-import type { Rationale, RestedOn } from "./shown.ts";
-import { show } from "./shown-number.ts";
+import { fixedPrint, withUnit } from "./print.ts";
+import type { Rationale, RestedUnit } from "./shown.ts";
 
 export interface RationaleFinding {
   code: "moved" | "inherited";
@@ -9,8 +9,8 @@ export interface RationaleFinding {
 }
 
 /** A number that was rested on, in its own unit and with the digits it was agreed with: "44.71 dBi". */
-export function restedText(value: number | null, { unit, digits }: Pick<RestedOn, "unit" | "digits">): string {
-  return value === null ? "no value" : show(value, unit, digits);
+export function restedText(value: number | null, { unit, perUnit, offset, digits }: RestedUnit): string {
+  return value === null ? "no value" : withUnit(fixedPrint((value - offset) / perUnit, digits), unit);
 }
 
 /** One sentence for each number that moved, one for an agreement that was only inherited. */

@@ -1,7 +1,7 @@
 // A decision beside its numbers: what was chosen and why, the numbers it rested on as agreed that day, and whether they still hold.
 
-import { parseQuantity, QuantityError, unitNamed } from "./quantity.ts";
-import type { FormerAgreement, Rationale, RestedOn } from "./shown.ts";
+import { parseQuantity, QuantityError, type Unit, unitNamed } from "./quantity.ts";
+import type { FormerAgreement, Rationale, RestedOn, RestedUnit } from "./shown.ts";
 
 export interface RestsOnDetails {
   /** the number as agreed, with its unit: "44.71 dBi", "96.6 mm" */
@@ -29,9 +29,7 @@ export function restsOn(label: string, now: number | null, { agreed, mayMove }: 
     agreed: then.value,
     now,
     tolerance,
-    unit: then.unit,
-    perUnit: unit.scale,
-    digits: then.digits,
+    ...restedUnit(unit, then.digits),
     moved: now === null || Math.abs(now - then.value) > tolerance * (1 + 1e-9),
   };
 }
@@ -90,13 +88,17 @@ export function rationale(beside: unknown, details: RationaleDetails): Rationale
   };
 }
 
+function restedUnit({ text, scale, offset }: Unit, digits: number): RestedUnit {
+  return { unit: text, perUnit: scale, offset, digits };
+}
+
 function former({ author, date, agreed }: NonNullable<RationaleDetails["history"]>[number]): FormerAgreement {
   return {
     author,
     date: day("rationale: date of a former agreement", date),
     agreed: Object.entries(agreed).map(([label, text]) => {
       const { value, unit, digits } = read(`former ${label}`, text);
-      return { label, value, unit, perUnit: unitNamed(unit).scale, digits };
+      return { label, value, ...restedUnit(unitNamed(unit), digits) };
     }),
   };
 }

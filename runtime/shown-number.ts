@@ -1,8 +1,7 @@
 // Numbers as the page writes them: true minus sign, a space that doesn't break before the unit, never NaN.
+import { fixedPrint, trueMinus, withUnit } from "./print.ts";
 import { inUnit } from "./quantity.ts";
 import { unitNamed } from "./unit.ts";
-
-const SPACE = "\u00a0";
 
 /**
  * An SI number written in a unit: show(8.4e9, "GHz", 3) is "8.400 GHz", show(0.6056, "deg", 1) is "34.7°".
@@ -24,12 +23,8 @@ export function show(value: number, unitText = "", digits?: number): string {
   const unit = unitNamed(unitText);
   const number = inUnit(value, unit);
   const text = digits === undefined ? significant(number) : fixed(number, digits);
-  if (unit.text === "") return text;
-  return unit.text === "deg" ? `${text}°` : `${text}${SPACE}${printed(unit.text)}`;
+  return withUnit(text, unit.text);
 }
-
-/** A compound unit as it is printed: "W/m^2" is "W/m²". */
-const printed = (unit: string): string => unit.replace(/\^2\b/g, "²").replace(/\^3\b/g, "³").replace(/\*/g, "·");
 
 /** Four significant figures: as many as a reader takes in; powers of ten only far from one. */
 export function significant(value: number, figures = 4): string {
@@ -46,13 +41,10 @@ export function significant(value: number, figures = 4): string {
 }
 
 function fixed(value: number, digits: number): string {
-  const text = value.toFixed(digits);
-  // toFixed turns to powers of ten from 1e21 on, and keeps the sign of a negative that rounds to nothing.
-  if (/e/.test(text)) return significant(value);
-  return trueMinus(/^-0\.?0*$/.test(text) ? text.slice(1) : text);
+  // toFixed turns to powers of ten from 1e21 on
+  return /e/.test(value.toFixed(digits)) ? significant(value) : fixedPrint(value, digits);
 }
 
 const trimZeros = (text: string): string => (text.includes(".") ? text.replace(/\.?0+$/, "") : text);
-const trueMinus = (text: string): string => text.replace("-", "−");
 const superscript = (text: string): string =>
   [...text].map((c) => (c === "-" ? "⁻" : "⁰¹²³⁴⁵⁶⁷⁸⁹"[Number(c)])).join("");

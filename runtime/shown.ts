@@ -114,8 +114,19 @@ export interface Table {
   data?: (string | number)[][];
 }
 
-/** A number that a decision rested on. Values in SI; `unit`, `perUnit` and `digits` say how both are shown. */
-export interface RestedOn {
+/** How a number that was rested on is written. */
+export interface RestedUnit {
+  /** as a reader sees it: "dBi", "mm", "m²"; empty for a plain ratio */
+  unit: string;
+  /** SI = number of `unit`s × perUnit + offset; 1 and 0 for a level in dB */
+  perUnit: number;
+  offset: number;
+  /** decimal places of the shown value */
+  digits: number;
+}
+
+/** A number that a decision rested on. Values in SI. */
+export interface RestedOn extends RestedUnit {
   label: string;
   /** as agreed that day */
   agreed: number;
@@ -123,12 +134,6 @@ export interface RestedOn {
   now: number | null;
   /** may move by this much either way, > 0 */
   tolerance: number;
-  /** "dBi", "mm"; empty for a plain ratio */
-  unit: string;
-  /** the SI value of one `unit`; 1 for a level in dB */
-  perUnit: number;
-  /** decimal places of the shown value */
-  digits: number;
   moved: boolean;
 }
 
@@ -138,7 +143,7 @@ export interface FormerAgreement {
   /** ISO 8601, the day */
   date: string;
   /** by the label they had then, in SI */
-  agreed: { label: string; value: number; unit: string; perUnit: number; digits: number }[];
+  agreed: ({ label: string; value: number } & RestedUnit)[];
 }
 
 /** A decision with what it rested on. Stands in the margin beside its figure or table (`CompiledCell.beside`). */

@@ -50,7 +50,7 @@ function writeButtons(context: PageContext, writing: Writing, cell: () => CellVi
 }
 
 export function footLine(context: PageContext, key: string): { element: HTMLElement; update(entry: FootEntry): void } {
-  const { document, study, live } = context;
+  const { document, study, live, still } = context;
   const id = nameId(key);
   let now: FootEntry | undefined;
   let savesShown = "";
@@ -64,8 +64,10 @@ export function footLine(context: PageContext, key: string): { element: HTMLElem
   const again = button(document, () => {
     for (const cell of roots("behind")) study.again(cell.name);
   });
-  const saves = html(document, "span", { class: "saves" });
-  const line = html(document, "div", { class: "line" }, bar, state, basis, live && stop, live && again, saves);
+  // before the script wakes they take their room already, unseen, so that nothing moves when it does
+  if (!live) for (const each of [stop, again]) each.setAttribute("data-asleep", "");
+  const saves = html(document, "span", { class: "saves", "data-asleep": !live });
+  const line = html(document, "div", { class: "line" }, bar, state, basis, !still && stop, !still && again, saves);
   const told = html(document, "p");
   const words = html(
     document,
@@ -107,7 +109,7 @@ export function footLine(context: PageContext, key: string): { element: HTMLElem
         write = writeButtons(context, context.writing, () => now?.cell);
         element.append(write, context.writing.hostFor(entry.cell));
       }
-      const offered = live ? (entry.saves ?? []) : [];
+      const offered = still ? [] : (entry.saves ?? []);
       const labels = offered.map((save) => save.describes).join("|");
       if (labels !== savesShown) {
         savesShown = labels;

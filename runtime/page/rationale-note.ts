@@ -17,14 +17,17 @@ export function dayWords(date: string): string {
   );
 }
 
-const slackText = (number: RestedOn): string =>
-  restedText(number.tolerance / number.perUnit === 0 ? 0 : number.tolerance, number);
+/** A difference of two levels is in plain decibels; no difference has an offset. */
+const differenceText = (value: number, { unit, perUnit, digits }: RestedOn): string =>
+  restedText(value, { unit: /^dB/.test(unit) ? "dB" : unit, perUnit, offset: 0, digits });
+
+const slackText = (number: RestedOn): string => differenceText(number.tolerance, number);
 
 /** "may move by 0.10 dBi"; moved ones say by how much they did. */
 function verdict(number: RestedOn): string {
   if (!number.moved) return `may move by ${slackText(number)}`;
   if (number.now === null) return "moved: there is no such number any more";
-  return `moved by ${restedText(Math.abs(number.now - number.agreed), number)}, may by ${slackText(number)}`;
+  return `moved by ${differenceText(Math.abs(number.now - number.agreed), number)}, may by ${slackText(number)}`;
 }
 
 function numberLine(document: Document, number: RestedOn): HTMLElement {

@@ -110,7 +110,7 @@ test("a study forked, decided, moved, agreed to again, sent, and forked from the
   await own.locator("#given-bandLow").fill("7.2 GHz");
   await own.keyboard.press("Enter");
   await rationale.locator("li[data-moved]").waitFor();
-  expect((await shownText(rationale)).replace(/\s+/g, " ")).toMatch(/moved by \d\.\d\d dBi, may by 0\.10 dBi/);
+  expect((await shownText(rationale)).replace(/\s+/g, " ")).toMatch(/moved by \d\.\d\d dB, may by 0\.10 dB/);
   await expect.poll(() => sentence(own).textContent()).toMatch(/Two rationales have moved/);
   await picture(own, "4-moved");
 

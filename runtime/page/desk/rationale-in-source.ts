@@ -29,7 +29,7 @@ export function rationaleInSource(source: string, value: Rationale | undefined):
       label: unquoted(label),
       expression: expression.trim(),
       unit: known?.unit ?? "",
-      tolerance: mayMove || (known ? restedText(known.tolerance, known) : ""),
+      tolerance: mayMove || (known ? restedText(known.tolerance, { ...known, offset: 0 }).replace("−", "-") : ""),
     };
   });
   return {
