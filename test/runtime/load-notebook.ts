@@ -6,7 +6,7 @@ const notebooks = new URL("../../notebooks/", import.meta.url).pathname;
 
 /** What every notebook of these tests may use. */
 export const VOCABULARY =
-  'import { background, caution, figure, given, head, lead, margin, markdown, note, show, table } from "../runtime/index.ts";';
+  'import { background, caution, figure, given, head, lead, margin, markdown, note, rationale, restsOn, show, table } from "../runtime/index.ts";';
 
 /** Bundles TypeScript that stands in notebooks/ (or another folder) as one ES module. */
 export async function bundled(
