@@ -19,6 +19,10 @@ const BENCHES: Record<string, { about: string; load: () => Promise<{ bench: Benc
     about: "one turn of a given of the whole trade study, to repaint",
     load: () => import("./bench/control-turn.ts"),
   },
+  matching: {
+    about: "mode matching of two horns over 9–12 GHz, a frequency",
+    load: () => import("./bench/matching.ts"),
+  },
 };
 
 const names = Object.keys(BENCHES);
