@@ -81,6 +81,7 @@ export {
   sunFocus,
 } from "./reflector/sun-focus.ts";
 // Trade: every candidate over the band, side by side, judged.
+export * from "./trade/matched-band.ts";
 export * from "./trade/over-band.ts";
 export * from "./trade/trade-table.ts";
 export * from "./trade/verdict.ts";

@@ -21,6 +21,7 @@ export { type ApertureField, sampledField, strengthAtWall, sumOfFields } from ".
 export { type DrawnHorn, hornsToScale } from "./horns-to-scale.ts";
 export { type PatternDifference, patternDifference } from "./kit/pattern-difference.ts";
 export { type LossEntry, type LossGap, type LossStep, lossSteps, performanceSteps } from "./loss-steps.ts";
+export { disagreements, modelsSheet } from "./models-sheet.ts";
 export { type CutEntry, type CutGap, type PatternCutsOptions, patternCuts } from "./pattern-cuts.ts";
 export { type TradeSheet, tradeSheet } from "./trade-sheet.ts";
 export { bestRow, kindNames, kindNouns, tradeSentences } from "./trade-words.ts";

@@ -52,6 +52,7 @@ const lines: readonly Line[] = [
     unit: "dB",
     shown: (value) => (value < noCrossPolarDb ? `below ${decimal(noCrossPolarDb, 0)}` : decimal(value, 1)),
   },
+  { field: "returnLossDb", label: "Return loss at the throat", unit: "dB", shown: oneDecimal },
   { field: "edgeTaperDb", label: "Edge taper, space loss included", unit: "dB", shown: oneDecimal, over: "up to" },
   { field: "halfPowerBeamwidthDeg", label: "Half-power beamwidth", unit: "deg", shown: oneDecimal, over: "up to" },
   { field: "phaseCenterM", label: "Phase centre from the mouth", unit: "mm, − inside", shown: inMm, over: "up to" },
@@ -71,7 +72,8 @@ const isSwept = (row: TradeRow): row is SweptRow => row.feasible;
 export function tradeSheet(trade: Trade): TradeSheet {
   if (trade.rows.length === 0) throw new RangeError("tradeSheet: trade must have at least one row; got none");
   const swept = trade.rows.filter(isSwept);
-  const rows: TradeSheet["rows"] = swept.length === 0 ? [] : lines.map((line) => lineOf(line, swept));
+  const known = lines.filter(({ field }) => swept.every((row) => row[field] !== null));
+  const rows: TradeSheet["rows"] = swept.length === 0 ? [] : known.map((line) => lineOf(line, swept));
   for (const row of trade.rows)
     if (!row.feasible)
       rows.push({ key: row.kind, label: `${kindNames[row.kind]}: not realisable for this dish`, cells: row.reason });
@@ -90,11 +92,11 @@ function lineOf(
     label,
     under: limit ? `${unit}; ${limit.sense} ${shown(limit.limit)}` : unit,
     cells: swept.map((row) => {
-      const worst = shown(row.worst[field]);
+      const worst = shown(row.worst[field] as number);
       const judged = row.verdicts.find((verdict) => verdict.field === field);
       const words = [...(over === "none" ? [] : [`${over} ${worst}`]), ...(judged ? [judged.words] : [])].join(", ");
       return {
-        text: shown(row[field]),
+        text: shown(row[field] as number),
         ...(words ? { word: words } : {}),
         ...(judged ? { verdict: judged.verdict } : {}),
       };

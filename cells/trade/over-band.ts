@@ -1,6 +1,6 @@
 // One feed in one dish, over the band.
 
-import { requireInteger, requirePositive, type Warning } from "../check.ts";
+import { requireInteger, requireNumber, requirePositive, type Warning } from "../check.ts";
 import type { Candidate, FeedKind, RealizableHorn } from "../horn/index.ts";
 import { closedFormPattern, ohmicLossDb } from "../horn/index.ts";
 import { beamwidth, crossPolarPeak, halfPowerDb, levelAt } from "../pattern/cuts.ts";
@@ -9,7 +9,7 @@ import { directivity } from "../pattern/power.ts";
 import { type Dish, spaceLossDb } from "../reflector/dish.ts";
 import { type DishPerformance, dishEfficiency } from "../reflector/efficiency.ts";
 import { phaseCenterOverDish } from "../reflector/feed-position.ts";
-import { powerToDb, toDeg, toGHz, toMm } from "../units.ts";
+import { fieldToDb, powerToDb, toDeg, toGHz, toMm } from "../units.ts";
 
 /** Fewest frequencies over a band. */
 export const fewestFrequencies = 21;
@@ -30,6 +30,8 @@ export interface OverBandOptions {
   conductivity?: number;
   /** the feed's pattern at a frequency; default the closed form of the horn's kind. Another model of the same horn goes here */
   patternAt?: (frequency: number) => FeedPattern;
+  /** |S11| of TE11 at the horn's throat, by a model that knows it; default unknown */
+  reflectionAt?: (frequency: number) => number;
 }
 
 /** A feed in its dish at one frequency. */
@@ -48,6 +50,8 @@ export interface BandPoint extends DishPerformance {
   feedDirectivityDbi: number;
   /** dB, positive, in the feed's walls */
   ohmicLossDb: number;
+  /** dB, positive, of TE11 at the throat; null by a model that doesn't know the match */
+  returnLossDb: number | null;
 }
 
 /** What the band gave, or why there is nothing to sweep. Plain data. */
@@ -156,7 +160,17 @@ function bandPoint({ horn, dish, pattern, feedPositionZ, options, frequency }: P
     phaseCenterSplitM: center.splitZ,
     feedDirectivityDbi: powerToDb(directivity(pattern)),
     ohmicLossDb: loss,
+    returnLossDb: options.reflectionAt ? returnLossDb(options.reflectionAt(frequency)) : null,
   };
+}
+
+/** Largest return loss told: below |S11| = 1e-5 it is rounding and roughness, no property of a horn. */
+const largestReturnLossDb = 100;
+
+/** dB, positive. @throws {RangeError} a reflection outside 0…1 */
+function returnLossDb(reflection: number): number {
+  requireNumber("overBand: reflection", reflection, { min: 0, max: 1 + 1e-6 });
+  return Math.min(largestReturnLossDb, -fieldToDb(reflection));
 }
 
 /** The horn's own warnings and those of every frequency, each kind once: numbers in a text vary over the band, so the first stands for all. */

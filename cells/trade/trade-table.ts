@@ -20,6 +20,8 @@ export interface TradeFigures {
   edgeTaperDb: number;
   halfPowerBeamwidthDeg: number;
   phaseCenterM: number;
+  /** null by a model that doesn't know the match */
+  returnLossDb: number | null;
   lengthM: number;
   /** inner diameter of the mouth */
   apertureDiameterM: number;
@@ -57,6 +59,7 @@ const swept = {
   edgeTaperDb: "farthest",
   halfPowerBeamwidthDeg: "greatest",
   phaseCenterM: "farthest",
+  returnLossDb: "least",
 } as const satisfies Partial<Record<keyof TradeFigures, "least" | "greatest" | "farthest">>;
 
 type SweptName = keyof typeof swept;
@@ -104,20 +107,22 @@ function emptyRow({ kind, reason, warnings }: { kind: FeedKind; reason: string; 
   return { kind, feasible: false, reason, ...none, worst: none, verdicts: [], verdict: null, warnings };
 }
 
-function figures(value: (name: SweptName) => number): Pick<TradeFigures, SweptName> {
+function figures(value: (name: SweptName) => number | null): Pick<TradeFigures, SweptName> {
   return Object.fromEntries(sweptNames.map((name) => [name, value(name)])) as Pick<TradeFigures, SweptName>;
 }
 
-function worstOf(name: SweptName, points: readonly BandPoint[], center: BandPoint): number {
-  const values = points.map((point) => point[name]);
+function worstOf(name: SweptName, points: readonly BandPoint[], center: BandPoint): number | null {
+  const values = points.map((point) => point[name]).filter((value) => value !== null);
+  const middle = center[name];
+  if (middle === null || values.length < points.length) return null;
   switch (swept[name]) {
     case "least":
       return Math.min(...values);
     case "greatest":
       return Math.max(...values);
     case "farthest": {
-      const distance = (value: number): number => Math.abs(value - center[name]);
-      return values.reduce((far, value) => (distance(value) > distance(far) ? value : far), center[name]);
+      const distance = (value: number): number => Math.abs(value - middle);
+      return values.reduce((far, value) => (distance(value) > distance(far) ? value : far), middle);
     }
   }
 }

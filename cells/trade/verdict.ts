@@ -12,6 +12,8 @@ export interface TradeLimits {
   minTotalEfficiency?: number;
   /** dBi; worst over the band */
   minGainDbi?: number;
+  /** dB, positive; worst over the band, judged where a model knows the match */
+  minReturnLossDb?: number;
   /** m, throat plane to mouth */
   maxLength?: number;
   /** m, outside, walls included */
@@ -69,6 +71,14 @@ const rules: readonly Rule[] = [
   },
   { limit: "minGainDbi", field: "gainDbi", label: "gain, worst", sense: "at least", unit: "dBi", barely: () => 0.1 },
   {
+    limit: "minReturnLossDb",
+    field: "returnLossDb",
+    label: "return loss, worst",
+    sense: "at least",
+    unit: "dB",
+    barely: () => 1,
+  },
+  {
     limit: "maxLength",
     field: "lengthM",
     label: "length",
@@ -93,12 +103,13 @@ const rounding = 1e-9;
  * Judges values (by field name, worst over the band) against the limits given.
  * @throws {RangeError} a limit that isn't a finite number
  */
-export function verdicts(values: Record<string, number>, limits: TradeLimits): Verdict[] {
+export function verdicts(values: Record<string, number | null>, limits: TradeLimits): Verdict[] {
   return rules.flatMap(({ limit: key, field, label, sense, unit, barely }) => {
     const limit = limits[key];
     if (limit === undefined || Math.abs(limit) === Number.POSITIVE_INFINITY) return [];
     requireNumber(`verdicts: ${key}`, limit);
-    const value = values[field]!;
+    const value = values[field];
+    if (value === undefined || value === null) return [];
     const bare = sense === "at most" ? limit - value : value - limit;
     const margin = Math.abs(bare) <= rounding * Math.abs(limit) ? 0 : bare;
     const verdict: VerdictWord = margin < 0 ? "misses" : margin < barely(limit) ? "barely" : "passes";

@@ -15,6 +15,7 @@ const figures: TradeFigures = {
   edgeTaperDb: 11,
   halfPowerBeamwidthDeg: 37,
   phaseCenterM: -0.005,
+  returnLossDb: null,
   lengthM: 0.1,
   apertureDiameterM: 0.07,
   outerDiameterM: 0.09,
