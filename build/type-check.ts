@@ -10,6 +10,16 @@ import { fileLabel } from "./notebook-place.ts";
  * @param files absolute; what they import is read but not reported: it belongs to others
  */
 export function typeProblems(files: readonly string[], projectRoot: string): Located[] {
+  try {
+    return diagnosed(files, projectRoot);
+  } catch (error) {
+    if (!(error instanceof RangeError)) throw error;
+    // the compiler descends with the source, until the stack ends
+    return [{ file: fileLabel(files[0]!, projectRoot), line: 0, text: "is nested too deeply for TypeScript to check" }];
+  }
+}
+
+function diagnosed(files: readonly string[], projectRoot: string): Located[] {
   const config = ts.readConfigFile(join(projectRoot, "tsconfig.json"), (path) => ts.sys.readFile(path));
   const { compilerOptions } = (config.config ?? {}) as { compilerOptions?: Record<string, unknown> };
   const { options } = ts.convertCompilerOptionsFromJson(

@@ -3,7 +3,7 @@ import { checkModule } from "./compile/check-cells.ts";
 import { draftModule } from "./compile/draft.ts";
 import { emitModule } from "./compile/emit.ts";
 import type { Problem } from "./compile/parts.ts";
-import { parseModule } from "./compile/syntax.ts";
+import { type ParsedModule, parseModule, TOO_DEEP } from "./compile/syntax.ts";
 import type { CompiledCell } from "./study.ts";
 
 export type { Problem };
@@ -27,6 +27,15 @@ export interface CompiledNotebook {
  */
 export function compileNotebook(source: string, file: string): CompiledNotebook {
   const parsed = parseModule(source);
+  try {
+    return compiled(source, file, parsed);
+  } catch (error) {
+    if (!(error instanceof RangeError)) throw error;
+    return compiled(source, file, { ...parsed, problems: [TOO_DEEP] });
+  }
+}
+
+function compiled(source: string, file: string, parsed: ParsedModule): CompiledNotebook {
   const unreadable = parsed.problems.length > 0;
   const module = draftModule(source, unreadable ? { ...parsed, statements: [], redeclared: [] } : parsed);
   const checked = checkModule(file, module, parsed);

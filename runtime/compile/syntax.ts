@@ -42,6 +42,14 @@ interface ParserError {
   loc?: { line: number; column: number };
 }
 
+const NOTHING: ParsedModule = { statements: [], comments: [], problems: [], redeclared: [] };
+
+/** The parser descends with the source and so does the compiler; where the stack ends, there is no line to name. */
+export const TOO_DEEP: SyntaxProblem = {
+  message: "an expression in it is nested too deeply, or is a sum of thousands of terms",
+  ...{ line: 1, column: 1 },
+};
+
 /** Parses a TypeScript module; a file that cannot be read gives no statements and at least one problem. */
 export function parseModule(source: string): ParsedModule {
   try {
@@ -59,9 +67,10 @@ export function parseModule(source: string): ParsedModule {
       redeclared: errors.filter((error) => error.reasonCode === "VarRedeclaration").map(syntaxProblem),
     };
   } catch (error) {
+    if (error instanceof RangeError) return { ...NOTHING, problems: [TOO_DEEP] };
     const problem = error as ParserError;
     if (!problem.loc) throw error;
-    return { statements: [], comments: [], problems: [syntaxProblem(problem)], redeclared: [] };
+    return { ...NOTHING, problems: [syntaxProblem(problem)] };
   }
 }
 

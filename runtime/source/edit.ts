@@ -10,6 +10,7 @@ import {
   type Node,
   type ParsedModule,
   parseModule,
+  TOO_DEEP,
   unwrapped,
 } from "../compile/syntax.ts";
 import { compileNotebook } from "../compile.ts";
@@ -44,7 +45,12 @@ export function viewSource(source: string, file: string): SourceView {
   const parsed = parseModule(source);
   const problem = parsed.problems[0];
   if (problem) throw new RewriteRefused(`${file} can't be read: ${problem.message}`, problem.line);
-  return { source, file, parsed, module: draftModule(source, parsed) };
+  try {
+    return { source, file, parsed, module: draftModule(source, parsed) };
+  } catch (error) {
+    if (error instanceof RangeError) throw new RewriteRefused(`${file} can't be read: ${TOO_DEEP.message}`);
+    throw error;
+  }
 }
 
 /**
