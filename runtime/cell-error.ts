@@ -40,17 +40,35 @@ export const passedOn = (failure: CellFailure, name: string): CellFailure => ({
   path: [...failure.path, name],
 });
 
+/** Whatever was thrown: one that can't even be looked at has a reason all the same. */
 function reasonOf(error: unknown): string {
+  try {
+    return wordsOf(error);
+  } catch {
+    return "threw something that can't be read";
+  }
+}
+
+function wordsOf(error: unknown): string {
   if (!(error instanceof Error)) {
     const message = (error as { message?: unknown } | null | undefined)?.message;
     return typeof message === "string" && message !== "" ? message : `threw ${String(error)}`;
   }
-  return error.message === "" ? error.name : error.message.replace(/\s*\n\s*/g, " ");
+  const message = String(error.message);
+  return message === "" ? String(error.name) : message.replace(/\s*\n\s*/g, " ");
+}
+
+function stackOf(error: unknown): unknown {
+  try {
+    return (error as { stack?: unknown } | null | undefined)?.stack;
+  } catch {
+    return undefined;
+  }
 }
 
 /** The first line of this cell in the stack; there is one where the stack is mapped back to the notebook (Node with source maps). */
 function lineInStack(error: unknown, { line, endLine }: CompiledCell, file: string): number | undefined {
-  const stack = (error as { stack?: unknown } | null | undefined)?.stack;
+  const stack = stackOf(error);
   if (typeof stack !== "string") return undefined;
   for (const [, path, at] of stack.matchAll(/([^\s()]+):(\d+):\d+/g)) {
     const found = Number(at);

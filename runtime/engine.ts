@@ -294,15 +294,17 @@ class RunningStudy implements Study {
     const run: Run = { drop: () => {} };
     record.jobs = new Set();
     let result: unknown;
+    let later: PromiseLike<unknown> | undefined;
     try {
       const values = passed.map((input) => input.value);
       const extra = info.background ? [this.backgroundFor(record, run)] : [];
       result = info.define(...([...values, ...extra] as never[]));
+      later = isThenable(result) ? result : undefined;
     } catch (error) {
       return this.accept(record, passed, this.failed(record, error));
     }
-    if (!isThenable(result)) return this.accept(record, passed, { record, value: result });
-    return this.awaitResult(record, run, passed, result);
+    if (!later) return this.accept(record, passed, { record, value: result });
+    return this.awaitResult(record, run, passed, later);
   }
 
   private awaitResult(
@@ -321,10 +323,14 @@ class RunningStudy implements Study {
         record.progress = undefined;
         resolve(this.accept(record, passed, outcome));
       };
-      result.then(
-        (value) => end({ record, value }),
-        (error) => end(this.failed(record, error)),
-      );
+      try {
+        result.then(
+          (value) => end({ record, value }),
+          (error) => end(this.failed(record, error)),
+        );
+      } catch (error) {
+        end(this.failed(record, error));
+      }
     });
   }
 
@@ -334,11 +340,20 @@ class RunningStudy implements Study {
 
   private accept(record: CellRecord, passed: readonly Passed[], outcome: Outcome): Passed {
     if (!isLatest(passed)) return OVERTAKEN;
-    if (this.frozen) deepFreeze(outcome.value);
-    record.outcome = outcome;
+    record.outcome = this.frozen ? this.withFrozenValue(record, outcome) : outcome;
     record.fresh = true;
     this.noteChange(record);
-    return outcome;
+    return record.outcome;
+  }
+
+  /** A value that can't be frozen, since looking at it throws, is no value. */
+  private withFrozenValue(record: CellRecord, outcome: Outcome): Outcome {
+    try {
+      deepFreeze(outcome.value);
+      return outcome;
+    } catch (error) {
+      return this.failed(record, error);
+    }
   }
 
   /** What a cell receives as `background`. */

@@ -147,9 +147,20 @@ function startWalk(): Walk {
       case "bigint":
         return String(value);
       case "object":
-        return value === null ? null : inside(cell, value, path);
+        return value === null ? null : readable(cell, value, path);
       default:
         return undefined;
+    }
+  }
+
+  /** A field that throws when it is read, or that lies too deep, has no value; the rest has. */
+  function readable(cell: string, value: object, path: string): Plain | undefined {
+    try {
+      return inside(cell, value, path);
+    } catch (error) {
+      const where = path.length > 120 ? `${path.slice(0, 120)}…` : path;
+      tell(cell, "not-finite", `${where} can't be read: ${error instanceof Error ? error.message : "it throws"}`);
+      return null;
     }
   }
 
