@@ -13,6 +13,7 @@ import { type Bundle, bundleOnce } from "./bundle.ts";
 import { Failure } from "./command/failure.ts";
 import type { Progress } from "./command/progress.ts";
 import { NODE_ENTRY } from "./entries.ts";
+import { watchEvaluation } from "./evaluation-watch.ts";
 import type { NotebookPlace } from "./notebook-place.ts";
 import { enterGivens } from "./set-givens.ts";
 
@@ -40,17 +41,22 @@ export async function evaluateHeadless(
   const files = await placeBundle(bundle, projectRoot);
   // What a notebook logs while it is tried out must not get among the numbers on standard output.
   globalThis.console = new Console(process.stderr);
+  let running: Study | undefined;
+  const unwatch = watchEvaluation(place.label, () => running);
   let notebook: NotebookModule;
   try {
     ({ notebook } = (await import(pathToFileURL(files.module).href)) as { notebook: NotebookModule });
   } catch (error) {
+    unwatch();
     await files.remove();
     const reason = error instanceof Error ? error.message : String(error);
     throw new Failure(`${place.label}: a file that it imports can't be loaded: ${reason}`, 1, error);
   }
   const background = createBackgroundPool({ spawn: nodeSpawn(pathToFileURL(files.worker)) });
   const study = createStudy(notebook, { background });
+  running = study;
   const close = async () => {
+    unwatch();
     study.dispose();
     background.dispose();
     await files.remove();
