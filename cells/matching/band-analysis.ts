@@ -1,24 +1,25 @@
 // A horn's modes over a band, from its profile.
 
-import { requireInteger, type Warning } from "../check.ts";
-import { speedOfLight } from "../constants.ts";
+import type { Warning } from "../check.ts";
 import type { HornProfile } from "../guide/horn-profile.ts";
 import { type ComplexVector, complexVector } from "../math/complex.ts";
 import type { ApertureModes } from "../radiation/aperture-modes.ts";
-import { type BandOptions, checkFrequencies, plannedLevels, wantedErrors } from "./band-options.ts";
+import { type BandOptions, checkFrequencies, plannedLevels, type Wanted, wantedErrors } from "./band-options.ts";
 import { bandWarnings } from "./band-warnings.ts";
-import { hasEdges } from "./chain.ts";
-import type { Convergence } from "./convergence.ts";
+import { type Convergence, convergenceOf } from "./convergence.ts";
+import { type LevelSolution, solutionAt } from "./level-solution.ts";
+import { listedAmplitudes, pairCount } from "./listed-modes.ts";
 import type { Memory } from "./memory.ts";
-import { travellingCount } from "./mode-table.ts";
-import { continuedTail } from "./mouth-tail.ts";
-import { isGuide, type Piece, profilePieces } from "./pieces.ts";
-import { type Level, plannedSolutions, type Refined, refine, steepness, taperSteps } from "./refinement.ts";
-import { bandOf, prepare, solveBand } from "./solve.ts";
+import type { Answer } from "./outcome.ts";
+import { type Piece, profilePieces } from "./pieces.ts";
+import type { Refined } from "./refinement.ts";
+import { narrowResonances, type Resonance } from "./resonances.ts";
+import { acrossResonances, whereItMoves } from "./sampling.ts";
+import { bandOf } from "./solve.ts";
 
 /** Plain data: can be sent to and from a worker. */
 export interface BandAnalysis {
-  /** Hz, [frequencyCount] */
+  /** Hz, [frequencyCount]: as asked, or ascending with more between them */
   frequencies: number[];
   /** reflection of TE11 at the start of the profile, [frequencyCount] */
   s11: ComplexVector;
@@ -30,6 +31,8 @@ export interface BandAnalysis {
    */
   powerBalance: number[];
   convergence: Convergence;
+  /** resonances too narrow for the frequencies asked for, ascending: centre, width, and how much they move */
+  resonances: Resonance[];
   warnings: Warning[];
 }
 
@@ -45,19 +48,26 @@ export function analyseBand(
   const wanted = wantedErrors(options);
   const plan = plannedLevels(options);
   checkFrequencies(frequencies, pieces[0]!.startRadius);
-  const pairs = pairCount(options, pieces, frequencies);
+  const band = bandOf(frequencies);
+  const mouth = pieces.at(-1)!;
+  const pairs = pairCount(options.modePairs, mouth, band.high * mouth.endRadius);
   const attempts: Convergence["attempts"] = [];
   for (const [i, level] of plan.entries()) {
-    const share = (part: number): void => progress?.((i + part) / plan.length);
-    const { refined, convergence } = solvedAt({ memory, pieces, level, options, share });
-    const { reflectionError, apertureError } = convergence;
+    const solution = solutionAt({ memory, pieces, level, band, steps: options.taperSteps });
+    const { refined, finest } = solution.at(frequencies, (share) => progress?.((i + share) / plan.length));
+    const resonances = resonancesOf(solution, frequencies, finest);
+    const { reflectionError, apertureError, excess } = judged(frequencies, refined, resonances, wanted);
     attempts.push({ level, reflectionError, apertureError });
-    const reached = reflectionError <= wanted.reflection && apertureError <= wanted.aperture;
-    const excess = Math.max(reflectionError / wanted.reflection, apertureError / wanted.aperture);
+    const reached = excess <= 1;
     if (!reached && i < plan.length - 1 && (i === 0 || excess < likelyGain)) continue;
+    const sampled =
+      options.sampling === "finer"
+        ? sampledFiner(solution, frequencies, refined, resonances)
+        : { frequencies: [...frequencies], refined };
     memory.endCall();
     progress?.(1);
-    return assembled({ pieces, frequencies, pairs, refined, convergence: { ...convergence, attempts, reached } });
+    const convergence = convergenceOf(solution, sampled.refined, { reflectionError, apertureError, attempts, reached });
+    return assembled({ ...sampled, mouth, pairs, convergence, resonances });
   }
   throw new Error("bandAnalysis: there is no level of fineness to try");
 }
@@ -65,111 +75,83 @@ export function analyseBand(
 /** A further level lowers the error about threefold; it is not tried when that can't suffice. */
 const likelyGain = 6;
 
-interface Task {
-  memory: Memory;
-  pieces: Piece[];
-  level: Level;
-  options: BandOptions;
-  share: (part: number) => void;
+function resonancesOf(solution: LevelSolution, frequencies: number[], finest: Answer[]): Resonance[] {
+  const order = frequencies.map((_, i) => i).sort((a, b) => frequencies[a]! - frequencies[b]!);
+  return narrowResonances(
+    solution.finest,
+    order.map((i) => frequencies[i]!),
+    order.map((i) => finest[i]!),
+  );
 }
 
-function solvedAt({ memory, pieces, level, options, share }: Task): {
-  refined: Refined[];
-  convergence: Omit<Convergence, "attempts" | "reached">;
-} {
-  const { frequencies } = options;
-  const band = bandOf(frequencies);
-  const byRule = taperSteps(pieces, level.stepsPerWavelength, speedOfLight / Math.max(...frequencies));
-  const steps = byRule.map((n, p) => (isGuide(pieces[p]!) ? 1 : (options.taperSteps ?? n)));
-  const tapers = !pieces.every(isGuide);
-  const edges = hasEdges(pieces);
-  const steep = steepness(pieces);
-  const plan = plannedSolutions(level, { tapers, edges }, { steps, highestWaveNumber: band.high });
-  const prepared = plan.map(({ fineness }) => prepare(memory, pieces, fineness, band));
-  const solved = prepared.map((each, s) => solveBand(each, frequencies, (part) => share((s + part) / prepared.length)));
-  const { chain, table } = prepared[0]!;
-  const refined = frequencies.map((frequency, f) => {
-    const k = (2 * Math.PI * frequency) / speedOfLight;
-    const answers = solved.map((each) => each[f]!);
-    const travelling = {
-      throat: travellingCount(pieces[0]!.startRadius, k, table),
-      mouth: travellingCount(pieces.at(-1)!.endRadius, k, table),
-    };
-    return refine(plan, answers, { travelling, steep });
-  });
-  const reflectionErrors = refined.map(({ reflectionError }) => reflectionError);
-  const apertureError = Math.max(...refined.map((one) => one.apertureError));
-  return {
-    refined,
-    convergence: {
-      edgeFunctions: chain.apertures.reduce(
-        (most, { kind, count }) => (kind === "edge" ? Math.max(most, count) : most),
-        0,
-      ),
-      taperModes: tapers || chain.apertures.some(({ kind }) => kind === "step") ? level.taperModes : 0,
-      summedModes: chain.guides.reduce((most, { modeCount }) => Math.max(most, modeCount), 0),
-      taperSteps: steps.reduce((sum, n, p) => sum + (isGuide(pieces[p]!) ? 0 : n), 0),
-      sections: chain.guides.length,
-      reflectionError: Math.max(...reflectionErrors),
-      apertureError,
-      crossPolarErrorDb: 20 * Math.log10(Math.max(apertureError, 1e-15)),
-      reflectionErrors,
-      rule: tapers
-        ? "Of what extrapolation adds to the finest solution: all for the edges of the metal, in the tapers a share that falls with the number of modes (5/N for S11, 3/N for the aperture, times 1 + slope)."
-        : "What extrapolation from two functions fewer at every edge of the metal adds to the finest solution.",
-    },
-  };
+/** Widths about a resonance within which its own shift from one fineness to the next is all that is seen. */
+const besideResonance = 5;
+
+/** Largest errors away from narrow resonances (or anywhere, if all is beside one) and by how much they exceed the wanted. */
+function judged(frequencies: number[], refined: Refined[], resonances: Resonance[], wanted: Wanted) {
+  const away = refined.filter((_, i) =>
+    resonances.every(({ frequency, width }) => Math.abs(frequencies[i]! - frequency) > besideResonance * width),
+  );
+  const counted = away.length > 0 ? away : refined;
+  const reflectionError = Math.max(...counted.map((one) => one.reflectionError));
+  const apertureError = Math.max(...counted.map((one) => one.apertureError));
+  const excess = Math.max(reflectionError / wanted.reflection, apertureError / wanted.aperture);
+  return { reflectionError, apertureError, excess };
 }
 
-/** Listed modes have a cutoff up to this multiple of the highest frequency: the next ones add below −80 dB. */
-const listedBelow = { edge: 4, taper: 5.5 };
+/** Rounds of putting samples where the last ones moved fast, and most samples for each asked for. */
+const sampleRounds = 4;
+const mostSamples = 10;
 
-function pairCount({ modePairs }: BandOptions, pieces: Piece[], frequencies: number[]): number {
-  if (modePairs !== undefined) return requireInteger("bandAnalysis: modePairs", modePairs, { min: 1, max: 200 });
-  const ka = (2 * Math.PI * Math.max(...frequencies) * pieces.at(-1)!.endRadius) / speedOfLight;
-  return Math.max(5, Math.ceil(((isGuide(pieces.at(-1)!) ? listedBelow.edge : listedBelow.taper) * ka) / Math.PI));
-}
-
-/** Share of a taper's modes whose amplitudes at its end, extrapolated, are good to a few percent of themselves. */
-const trustedShare = 0.5;
-
-function listedAmplitudes(outgoing: ComplexVector, last: Piece, taperModes: number, pairs: number): ComplexVector {
-  const count = 2 * pairs;
-  const trusted = 2 * Math.floor((trustedShare * taperModes) / 2);
-  if (!isGuide(last) && trusted >= 4 && trusted < count) {
-    const angle = Math.atan((last.endRadius - last.startRadius) / last.length);
-    return continuedTail(outgoing, { angle, trusted, count });
+function sampledFiner(
+  solution: LevelSolution,
+  asked: number[],
+  refined: Refined[],
+  resonances: Resonance[],
+): { frequencies: number[]; refined: Refined[] } {
+  let samples = asked.map((frequency, i) => ({ frequency, refined: refined[i]! }));
+  const low = Math.min(...asked);
+  const high = Math.max(...asked);
+  let further = acrossResonances(resonances, low, high);
+  for (let round = 0; round <= sampleRounds; round++) {
+    const solved = solution.at(further).refined;
+    samples = [...samples, ...further.map((frequency, i) => ({ frequency, refined: solved[i]! }))].sort(
+      (a, b) => a.frequency - b.frequency,
+    );
+    const frequencies = samples.map(({ frequency }) => frequency);
+    further = whereItMoves(
+      frequencies,
+      samples.map((sample) => sample.refined),
+    );
+    if (further.length === 0 || samples.length + further.length > mostSamples * asked.length) break;
   }
-  const amplitudes = complexVector(count);
-  amplitudes.re.set(outgoing.re.subarray(0, count));
-  amplitudes.im.set(outgoing.im.subarray(0, count));
-  return amplitudes;
+  return { frequencies: samples.map(({ frequency }) => frequency), refined: samples.map((sample) => sample.refined) };
 }
 
 interface Parts {
-  pieces: Piece[];
   frequencies: number[];
-  pairs: number;
   refined: Refined[];
+  mouth: Piece;
+  pairs: number;
   convergence: Convergence;
+  resonances: Resonance[];
 }
 
-function assembled({ pieces, frequencies, pairs, refined, convergence }: Parts): BandAnalysis {
-  const radius = pieces.at(-1)!.endRadius;
+function assembled({ frequencies, refined, mouth, pairs, convergence, resonances }: Parts): BandAnalysis {
   const s11 = complexVector(frequencies.length);
   const apertureModes = refined.map(({ answer: { reflected, outgoing } }, f): ApertureModes => {
     s11.re[f] = reflected.re[0]!;
     s11.im[f] = reflected.im[0]!;
-    const amplitudes = listedAmplitudes(outgoing, pieces.at(-1)!, convergence.taperModes, pairs);
-    return { frequency: frequencies[f]!, radius, modePairs: pairs, amplitudes, warnings: [] };
+    const amplitudes = listedAmplitudes(outgoing, { mouth, taperModes: convergence.taperModes, pairs });
+    return { frequency: frequencies[f]!, radius: mouth.endRadius, modePairs: pairs, amplitudes, warnings: [] };
   });
   const powerBalance = refined.map(({ answer }) => answer.powerError);
-  return {
-    frequencies: [...frequencies],
-    s11,
-    apertureModes,
+  const warnings = bandWarnings({
+    frequencies,
     powerBalance,
     convergence,
-    warnings: bandWarnings({ frequencies, powerBalance, convergence, mouthRadius: radius }),
-  };
+    resonances,
+    mouthRadius: mouth.endRadius,
+  });
+  return { frequencies, s11, apertureModes, powerBalance, convergence, resonances, warnings };
 }

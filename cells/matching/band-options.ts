@@ -13,6 +13,8 @@ export interface BandOptions {
   crossPolarErrorDb?: number;
   /** TE1n–TM1n pairs to list at the mouth; default those that travel or nearly do, at least 5 */
   modePairs?: number;
+  /** "finer": more frequencies where S11 or the modes at the mouth move fast, and across narrow resonances; default "asked" */
+  sampling?: "asked" | "finer";
   /** this fineness and no other, whatever the error; what is left out is as at the first level */
   level?: Partial<Level>;
   /** steps of every taper, even, instead of the level's rule */

@@ -3,6 +3,7 @@
 import type { Warning } from "../check.ts";
 import { cutoffFrequency, TE11 } from "../guide/mode.ts";
 import type { Convergence } from "./convergence.ts";
+import type { Resonance } from "./resonances.ts";
 
 /** Power missing beyond this is said. */
 const saidPowerError = 1e-9;
@@ -11,17 +12,27 @@ interface Doubts {
   frequencies: number[];
   powerBalance: number[];
   convergence: Convergence;
+  resonances: Resonance[];
   mouthRadius: number;
 }
 
-export function bandWarnings({ frequencies, powerBalance, convergence, mouthRadius }: Doubts): Warning[] {
+export function bandWarnings({ frequencies, powerBalance, convergence, resonances, mouthRadius }: Doubts): Warning[] {
   const warnings: Warning[] = [];
   const inGHz = (frequency: number): string => (frequency / 1e9).toPrecision(6);
   if (!convergence.reached) {
     const worst = convergence.reflectionErrors.indexOf(convergence.reflectionError);
     warnings.push({
       code: "precision-loss",
-      text: `Mode matching has not reached the wanted error: S11 is good to ${convergence.reflectionError.toExponential(1)} (worst at ${inGHz(frequencies[worst]!)} GHz), the field at the mouth to ${convergence.crossPolarErrorDb.toFixed(0)} dB. A narrow resonance near a frequency of the sweep is the usual cause; sample finer there.`,
+      text: `Mode matching has not reached the wanted error: S11 is good to ${convergence.reflectionError.toExponential(1)} (worst at ${inGHz(frequencies[worst]!)} GHz), the field at the mouth to ${convergence.crossPolarErrorDb.toFixed(0)} dB. A steep or strongly reflecting part of the wall is the usual cause; compare with a finer level.`,
+    });
+  }
+  if (resonances.length > 0) {
+    const names = resonances.map(
+      ({ frequency, width }) => `${(frequency / 1e9).toFixed(4)} GHz (about ${(width / 1e6).toPrecision(2)} MHz wide)`,
+    );
+    warnings.push({
+      code: "singular",
+      text: `The horn traps ${names.length === 1 ? "a narrow resonance" : `${names.length} narrow resonances`} between the frequencies asked for: ${names.join(", ")}. Match and pattern are spoilt there; corrugations do this at the low edge of their band. Raise the lowest frequency or change the depths of the first slots; sample finer there to confirm.`,
     });
   }
   const lost = powerBalance.reduce(

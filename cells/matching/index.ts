@@ -7,3 +7,4 @@ export { junctionCouplings } from "./couplings.ts";
 export { type StepOptions, type StepScattering, stepScattering } from "./junction.ts";
 export { bandAnalysis, createMatcher, type Matcher } from "./matcher.ts";
 export type { Level } from "./refinement.ts";
+export type { Resonance } from "./resonances.ts";

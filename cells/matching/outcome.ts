@@ -6,6 +6,8 @@ import type { RealMatrix } from "./couplings.ts";
 import { guardedGammaSquared, matchedAdmittance } from "./line.ts";
 import { isTE, type ModeTable } from "./mode-table.ts";
 import { solvePorts } from "./ports.ts";
+import { negativeEigenvalues } from "./resonance-count.ts";
+// from "./ports.ts";
 
 /** One frequency's answer to a wave of 1 W (TE11 unless asked otherwise) at the start of the profile; principal √Z. */
 export interface Answer {
@@ -19,6 +21,8 @@ export interface Answer {
   powerError: number;
   /** largest ratio of a diagonal element to its pivot in the elimination: rounding is magnified by up to so much */
   cancellation: number;
+  /** resonances below this frequency for each of `portReactances` at the ports */
+  resonancesBelow: number[];
 }
 
 /** What the elimination leaves for one frequency ("lane"). */
@@ -42,6 +46,8 @@ interface Eliminated {
   right: RealMatrix;
   table: ModeTable;
   cancellation: number;
+  /** negative pivots and resonances of shorted guides */
+  shorted: number;
 }
 
 export function answerAt(from: Eliminated): Answer {
@@ -59,6 +65,7 @@ export function answerAt(from: Eliminated): Answer {
     p < outPorts ? matched(last, p) : matched(first, p - outPorts),
   );
   const { voltage, current } = solvePorts(impedance, loads, outPorts + incident, portTerm);
+  const resonancesBelow = negativeEigenvalues(from.shorted, impedance, loads, portTerm);
   const drive = loads[outPorts + incident]!;
 
   const outgoing = complexVector(last.modeCount);
@@ -98,7 +105,7 @@ export function answerAt(from: Eliminated): Answer {
     travel(reflected, n, inward, first.length);
     travel(reflected, n, gammaSquared(first, n), first.length);
   }
-  return { reflected, outgoing, lastField, powerError: 1 - carried, cancellation: from.cancellation };
+  return { reflected, outgoing, lastField, powerError: 1 - carried, cancellation: from.cancellation, resonancesBelow };
 }
 
 /** A mode's voltage for unit voltage of the wave coming in → its wave amplitude for one of unit amplitude: × √(Z_in/Z). */

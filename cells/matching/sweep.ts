@@ -12,6 +12,7 @@ import { addGram, addGramLower, addScaled, eliminate, solveUpper } from "./elimi
 import { guardedGammaSquared, matchedAdmittance, writeLine } from "./line.ts";
 import { isTE, type ModeTable } from "./mode-table.ts";
 import { type Answer, answerAt } from "./outcome.ts";
+import { shortedResonances } from "./resonance-count.ts";
 import { nodeWeights, type SectionMatrices, type WaveBand } from "./section-matrices.ts";
 
 /** A horn ready for any frequency of its band. */
@@ -59,6 +60,7 @@ export function sweep(
   const outPorts = portCount(last, band.high, table);
 
   const cancellation = new Float64Array(lanes);
+  const negativePivots = new Int32Array(lanes);
 
   // Unknowns of the block at hand: its aperture's functions. `t` holds what eliminating it leaves: the next aperture's
   // block, then the throat's ports, which every block still sees.
@@ -96,7 +98,7 @@ export function sweep(
     else setPortColumns(x, size, nextCount, bases[0]!.left.modes, inPorts);
     const diagonal = diagonalOf(s, count);
     eliminate(s, x, t, count, size, lanes);
-    noteCancellation(diagonal, s, count);
+    notePivots(diagonal, s, count);
     if (!next) {
       solveUpper(s, x, count, size, lanes);
       return waveNumbers.map((k, lane) =>
@@ -116,6 +118,7 @@ export function sweep(
           right: right.modes,
           table,
           cancellation: cancellation[lane]!,
+          shorted: negativePivots[lane]! + shortedResonances(chain, k, table),
         }),
       );
     }
@@ -138,11 +141,13 @@ export function sweep(
     return out;
   }
 
-  /** How much larger a diagonal element was than the pivot that elimination has left of it: so many digits are gone. */
-  function noteCancellation(before: Float64Array, s: Float64Array, count: number): void {
+  /** How much larger a diagonal element was than the pivot that is left of it: so many digits are gone. And the signs. */
+  function notePivots(before: Float64Array, s: Float64Array, count: number): void {
     for (let p = 0; p < count; p++) {
       for (let l = 0; l < lanes; l++) {
-        const ratio = Math.abs(before[p * lanes + l]! * s[(p * count + p) * lanes + l]!);
+        const inverse = s[(p * count + p) * lanes + l]!;
+        if (inverse < 0) negativePivots[l]!++;
+        const ratio = Math.abs(before[p * lanes + l]! * inverse);
         if (!(ratio <= cancellation[l]!)) cancellation[l] = ratio;
       }
     }
