@@ -2,6 +2,8 @@
 // givens, the version, the date, and a digest of each, so that a study can be taken up again from the file alone.
 
 import { createHash } from "node:crypto";
+import { gunzipSync } from "node:zlib";
+import { packed } from "./packed-script.ts";
 
 export interface RecordedFile {
   /** from the notebook's folder, with slashes; the notebook itself comes first */
@@ -57,14 +59,16 @@ export function recordJson(record: ExportRecord): string {
 }
 
 /**
- * The record as an element. A still file has no script element at all, so there an inert template holds it.
- * In a template `&` would begin an entity; in JSON it can be written as an escape.
+ * The record as an element. A still file has no script element at all, so there an inert template holds it, packed (gzip,
+ * base64): nothing in the file reads it, only `fork` does.
  */
 export function recordElement(record: ExportRecord, { still }: { still: boolean }): string {
-  const json = recordJson(record).replaceAll("&", "\\u0026");
-  return still
-    ? `<template id="${RECORD_ID}">${json}</template>`
-    : `<script type="application/json" id="${RECORD_ID}">${json}</script>`;
+  if (!still) {
+    // `&` would begin an entity in some elements; in JSON it can be written as an escape
+    const json = recordJson(record).replaceAll("&", "\\u0026");
+    return `<script type="application/json" id="${RECORD_ID}">${json}</script>`;
+  }
+  return `<template id="${RECORD_ID}">${packed(recordJson(record))}</template>`;
 }
 
 /** True when a file begins as an export does; looks at its first 4 kB only. */
@@ -81,10 +85,11 @@ export function looksExported(beginning: string): boolean {
  */
 export function readRecord(htmlText: string): ExportRecord {
   const found = htmlText.match(/<(script|template)(?: type="application\/json")? id="hornbook-record">([^<]*)<\/\1>/);
+  const text = found?.[1] === "template" ? unpacked(found[2]!) : found?.[2];
   if (!found) throw new Error("the file carries no study: it isn't an export, or the record was cut out of it");
   let record: ExportRecord;
   try {
-    record = JSON.parse(found[2]!);
+    record = JSON.parse(text!);
   } catch (error) {
     throw new Error(`the study carried in the file can't be read: ${(error as Error).message}`);
   }
@@ -99,6 +104,17 @@ export function readRecord(htmlText: string): ExportRecord {
     throw new Error("the givens in the file aren't as they were exported: their digest differs");
   }
   return record;
+}
+
+/** Largest record that is unpacked: more is no notebook that a person wrote. */
+const UNPACKED_LIMIT = 64 * 1024 * 1024;
+
+function unpacked(base64: string): string {
+  try {
+    return gunzipSync(Buffer.from(base64, "base64"), { maxOutputLength: UNPACKED_LIMIT }).toString("utf8");
+  } catch (error) {
+    throw new Error(`the study carried in the file can't be unpacked: ${(error as Error).message}`);
+  }
 }
 
 function isRecordShaped(record: ExportRecord): boolean {

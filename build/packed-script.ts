@@ -27,11 +27,16 @@ export interface PackedScript {
   texts: string[];
 }
 
-/** A classic script, packed to stand in an HTML file. The same code gives the same bytes on every machine. */
-export function packedScript(code: string): PackedScript {
-  const bytes = gzipSync(code, { level: 9 });
+/** Text as gzip in base64, the same on every machine. */
+export function packed(text: string): string {
+  const bytes = gzipSync(text, { level: 9 });
   // RFC 1952: byte 9 names the file system it was packed on; 255 is "unknown".
   bytes[9] = 255;
-  const block = `<script type="application/gzip;base64" id="hornbook-packed">${bytes.toString("base64")}</script>`;
+  return bytes.toString("base64");
+}
+
+/** A classic script, packed to stand in an HTML file. The same code gives the same bytes on every machine. */
+export function packedScript(code: string): PackedScript {
+  const block = `<script type="application/gzip;base64" id="hornbook-packed">${packed(code)}</script>`;
   return { html: `${block}\n<script>${LOADER}</script>`, texts: [LOADER, code] };
 }

@@ -498,13 +498,12 @@ export const sheet = chosen.feasible
   ? buildSheet(chosen, { highestFrequency: bandHigh, shop: { tooth: [toothThickness, toothThickness] } })
   : null;
 const sheetTables = sheet && buildTables(sheet);
-const notBuilt = note`There is nothing to build: ${chosen.reason}`;
 export const drawing = sheet
   ? figure(
       { ...buildDrawing(sheet), files: [dxfFile(sheet)] },
       { caption: "Full section in true proportions; every length from the mouth.", basis: "first dimensions" },
     )
-  : notBuilt;
+  : note`There is nothing to build: ${chosen.reason}`;
 export const dimensions = sheetTables ? table(sheetTables.dimensions) : null;
 export const slots = sheetTables?.slots ? table(sheetTables.slots) : null;
 export const machining = sheetTables ? table(sheetTables.machining) : null;

@@ -8,7 +8,7 @@ import type { Drawing } from "./drawing.ts";
 import { roundStep } from "./kit/axis.ts";
 import { columns } from "./kit/columns.ts";
 import { control, hairline, ink, kindStyle, paper, secondary, textSize } from "./kit/palette.ts";
-import { coordinate, drawingRoot, type Pen, svgPen, text, textBlock } from "./kit/svg.ts";
+import { coordinate, drawingRoot, haloAttributes, type Pen, svgPen, text, textBlock } from "./kit/svg.ts";
 import { textWidth, wrapText } from "./kit/text-width.ts";
 import { unrealizable } from "./kit/unrealizable.ts";
 import { decibels, decimal, percent } from "./kit/words.ts";
@@ -147,6 +147,7 @@ function onePlace(pen: Pen, entry: LossEntry | LossGap, place: LossPlace): { ele
   const foot = first + entry.steps.length * rowPitch + 4;
   const bars: Element[] = scaleLines(pen, { ...place, axisY, foot });
   const words: Element[] = [title];
+  const labels: Element[] = [];
   let x = left;
   entry.steps.forEach((step, i) => {
     const y = first + i * rowPitch;
@@ -171,9 +172,9 @@ function onePlace(pen: Pen, entry: LossEntry | LossGap, place: LossPlace): { ele
         ...(step.common ? { fill: hairline, stroke: control, "stroke-width": 0.8 } : { fill: style.line }),
       }),
     );
-    words.push(
-      text(pen, left, y + 12, step.label, { halo: paper }),
-      text(pen, left + width, y + 12, decimal(value, 2), { anchor: "end", halo: paper }),
+    labels.push(
+      text(pen, left, y + 12, step.label),
+      text(pen, left + width, y + 12, decimal(value, 2), { anchor: "end" }),
     );
     x = left + Math.min(-deepest * perDb, x - left - value * perDb);
   });
@@ -186,7 +187,10 @@ function onePlace(pen: Pen, entry: LossEntry | LossGap, place: LossPlace): { ele
     text(pen, left + width, totalY, `${decibels(powerToDb(total), 2)} in all`, { anchor: "end" }),
     textBlock(pen, left, totalY + 22, lines, { fill: secondary, leading: 18 }),
   );
-  return { elements: [...bars, ...words], bottom: totalY + (lines.length > 0 ? 22 + (lines.length - 1) * 18 : 0) };
+  return {
+    elements: [...bars, pen("g", haloAttributes(paper), ...labels), ...words],
+    bottom: totalY + (lines.length > 0 ? 22 + (lines.length - 1) * 18 : 0),
+  };
 }
 
 function scaleLines(pen: Pen, at: LossPlace & { axisY: number; foot: number }): Element[] {

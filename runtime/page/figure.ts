@@ -18,6 +18,8 @@ export function figureBlock(context: PageContext, first: ShownEntry, titleLevel:
   const draw = (figure: Figure, width: number): Node => {
     try {
       drawing = figure.drawing.draw({ document, width });
+      // in a file the label says it already; a drawing that is saved says it itself
+      if (!live) drawing.querySelector("desc")?.remove();
       const picture = html(document, "div", { role: "img", "aria-label": typeset(figure.drawing.alt) }, drawing);
       return html(document, "div", { class: "drawing" }, picture);
     } catch (error) {

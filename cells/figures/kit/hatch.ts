@@ -1,7 +1,5 @@
 // Hatching of cut metal: lines at 45°, cut to the outline by arithmetic, so that no pattern needs an id.
 
-import { coordinate } from "./svg.ts";
-
 /**
  * Path of parallel lines at 45° (rising to the right) inside a closed polygon (even-odd), `spacing` px apart across the
  * lines. The lines lie on one grid for all polygons of a drawing.
@@ -28,8 +26,16 @@ export function hatchPath(polygon: readonly (readonly [x: number, y: number])[],
     at.sort((a, b) => a - b);
     for (let i = 0; i + 1 < at.length; i += 2) {
       const sum = line * step;
-      path += `M${coordinate(at[i]!)} ${coordinate(sum - at[i]!)}L${coordinate(at[i + 1]!)} ${coordinate(sum - at[i + 1]!)}`;
+      // every line runs at 45°: its start and how far it goes say all; tenths of a px are finer than a hatch is looked at
+      const length = tenths(at[i + 1]! - at[i]!);
+      if (length !== 0) path += `M${tenths(at[i]!)} ${tenths(sum - at[i]!)}l${length} ${-length}`;
     }
   }
   return path;
+}
+
+/** @throws {RangeError} not finite */
+function tenths(value: number): number {
+  if (!Number.isFinite(value)) throw new RangeError(`hatchPath: corners must be finite numbers of px; got ${value}`);
+  return Math.round(value * 10) / 10 + 0;
 }

@@ -86,13 +86,19 @@ export function text(pen: Pen, x: number, y: number, words: string, options: Tex
       "font-weight": bold ? 600 : undefined,
       "text-anchor": anchor === "start" ? undefined : anchor,
       transform: turn === undefined ? undefined : `rotate(${coordinate(turn)} ${coordinate(x)} ${coordinate(y)})`,
-      ...(halo === undefined
-        ? {}
-        : { stroke: halo, "stroke-width": 4, "stroke-linejoin": "round", "paint-order": "stroke" }),
+      ...(halo === undefined ? {} : haloAttributes(halo)),
     },
     words,
   );
 }
+
+/** What gives letters a rim; on a group, for all texts in it. */
+export const haloAttributes = (halo: string) => ({
+  stroke: halo,
+  "stroke-width": 4,
+  "stroke-linejoin": "round",
+  "paint-order": "stroke",
+});
 
 /** Lines of text, one under another; y is the baseline of the first. */
 export function textBlock(
@@ -109,6 +115,15 @@ export function textBlock(
 /** Path through points, open or closed. */
 export function pathThrough(points: readonly (readonly [number, number])[], closed = false): string {
   if (points.length === 0) return "";
-  const steps = points.map(([x, y], i) => `${i === 0 ? "M" : "L"}${coordinate(x)} ${coordinate(y)}`);
-  return steps.join("") + (closed ? "Z" : "");
+  let [lastX, lastY] = ["", ""];
+  let path = "";
+  points.forEach(([px, py], i) => {
+    const [x, y] = [coordinate(px), coordinate(py)];
+    // a slot's walls run along the axes: one number says where to
+    if (i === 0) path += `M${x} ${y}`;
+    else if (y === lastY) path += x === lastX ? "" : `H${x}`;
+    else path += x === lastX ? `V${y}` : `L${x} ${y}`;
+    [lastX, lastY] = [x, y];
+  });
+  return path + (closed ? "Z" : "");
 }

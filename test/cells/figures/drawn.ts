@@ -17,12 +17,17 @@ export function strokes(path: Element): [number, number][][] {
   return d
     .split("M")
     .slice(1)
-    .map((stroke) =>
-      stroke
-        .replace(/Z$/i, "")
-        .split("L")
-        .map((pair) => pair.split(/[ ,]/).map(Number) as [number, number]),
-    );
+    .map((stroke) => {
+      const points: [number, number][] = [];
+      for (const [, kind, pair] of `L${stroke.replace(/Z$/i, "")}`.matchAll(/([LlHV])([^LlHV]+)/g)) {
+        const [x, y] = pair!.trim().split(/[ ,]+/).map(Number) as [number, number];
+        const [lastX, lastY] = points.at(-1) ?? [0, 0];
+        if (kind === "H") points.push([x, lastY]);
+        else if (kind === "V") points.push([lastX, x]);
+        else points.push(kind === "l" ? [lastX + x, lastY + y] : [x, y]);
+      }
+      return points;
+    });
 }
 
 /** One set of axes: its curves in its own px, and the scales read back from its tick words. */

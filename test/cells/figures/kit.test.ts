@@ -157,7 +157,10 @@ describe("curves", () => {
 
 describe("hatching", () => {
   const segments = (path: string) =>
-    [...path.matchAll(/M(\S+) (\S+)L(\S+) (\S+?)(?=M|$)/g)].map((match) => match.slice(1).map(Number));
+    [...path.matchAll(/M(\S+) (\S+)l(\S+) (\S+?)(?=M|$)/g)].map((match) => {
+      const [x, y, right, down] = match.slice(1).map(Number) as [number, number, number, number];
+      return [x, y, x + right, y + down];
+    });
 
   test("lines at 45°, rising to the right, as long as area over spacing", () => {
     const square = [
