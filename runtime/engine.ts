@@ -14,6 +14,7 @@ import { matchCells, sameCell, withoutCycles } from "./engine/match-cells.ts";
 import { nextTurn } from "./engine/next-turn.ts";
 import { deepFreeze } from "./freeze.ts";
 import { Refusal } from "./given.ts";
+import { requireShowable } from "./shown-shape.ts";
 import type { CellView, GivenView, NotebookModule, Study } from "./study.ts";
 
 export interface StudyOptions {
@@ -340,16 +341,17 @@ class RunningStudy implements Study {
 
   private accept(record: CellRecord, passed: readonly Passed[], outcome: Outcome): Passed {
     if (!isLatest(passed)) return OVERTAKEN;
-    record.outcome = this.frozen ? this.withFrozenValue(record, outcome) : outcome;
+    record.outcome = outcome.failure ? outcome : this.looked(record, outcome);
     record.fresh = true;
     this.noteChange(record);
     return record.outcome;
   }
 
-  /** A value that can't be frozen, since looking at it throws, is no value. */
-  private withFrozenValue(record: CellRecord, outcome: Outcome): Outcome {
+  /** A value that throws when it is looked at, or that can't be shown though it says so, is a failure of its cell alone. */
+  private looked(record: CellRecord, outcome: Outcome): Outcome {
     try {
-      deepFreeze(outcome.value);
+      requireShowable(outcome.value);
+      if (this.frozen) deepFreeze(outcome.value);
       return outcome;
     } catch (error) {
       return this.failed(record, error);
