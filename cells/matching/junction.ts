@@ -69,7 +69,7 @@ export function stepScattering(options: StepOptions): StepScattering {
   });
   const bases = memory.bases(chain);
   const table = memory.table(Math.max(...chain.guides.map((guide) => guide.modeCount)));
-  const prepared = { chain, bases, sections: memory.sections(chain, bases, band), band, table };
+  const prepared = { chain, bases, sections: memory.sections(chain, bases, band), band, table, kernel: memory.kernel };
   const [answer] = sweep(prepared, [frequency], { incident });
   const { outgoing, lastField, powerError } = answer!;
 

@@ -6,10 +6,10 @@ import type { Memory } from "./memory.ts";
 import { travellingCount } from "./mode-table.ts";
 import type { Answer } from "./outcome.ts";
 import { isGuide, type Piece } from "./pieces.ts";
+import type { Prepared } from "./prepared.ts";
 import { type Level, plannedSolutions, type Refined, refine, steepness, taperSteps } from "./refinement.ts";
 import type { WaveBand } from "./section-matrices.ts";
 import { prepare, solveBand } from "./solve.ts";
-import type { Prepared } from "./sweep.ts";
 
 export interface LevelSolution {
   level: Level;

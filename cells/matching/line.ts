@@ -23,34 +23,46 @@ export function matchedAdmittance(te: boolean, gammaSquared: number, k: number):
   return { re: te ? size : -1 / size, im: 0 };
 }
 
-/**
- * jη0 times the two admittances of a line of length L: self = Y·coth γL, transfer = Y/sinh γL. Written to `self[at]` and
- * `transfer[at]`.
- */
+/** Where line admittances are written: `self` from index `selfAt` on, `transfer` from `transferAt` on. */
+export interface LineTarget {
+  self: Float64Array;
+  transfer: Float64Array;
+  selfAt: number;
+  transferAt: number;
+}
+
+/** jη0 times the two admittances of a line: self = Y·coth γL, transfer = Y/sinh γL. Written at place `at` of the target. */
 export function writeLine(
   te: boolean,
   gammaSquared: number,
-  { k, length }: { k: number; length: number },
-  { self, transfer }: { self: Float64Array; transfer: Float64Array },
+  k: number,
+  length: number,
+  target: LineTarget,
   at: number,
 ): void {
   const size = Math.sqrt(Math.abs(gammaSquared));
   const turn = size * length;
   let cothLike: number; // γ·coth γL
   let cschLike: number; // γ/sinh γL
-  if (gammaSquared > 0) {
+  if (gammaSquared < 0) {
+    const sine = Math.sin(turn);
+    cothLike = (size * Math.cos(turn)) / sine;
+    cschLike = size / sine;
+  } else if (turn > longLine) {
+    cothLike = size;
+    cschLike = 0;
+  } else {
     const e = Math.exp(-turn);
     const square = e * e;
     // 1 − e^{−2x} without cancellation for short lines
     const difference = turn < 0.3 ? -Math.expm1(-2 * turn) : 1 - square;
     cothLike = (size * (1 + square)) / difference;
     cschLike = (2 * size * e) / difference;
-  } else {
-    const sine = Math.sin(turn);
-    cothLike = (size * Math.cos(turn)) / sine;
-    cschLike = size / sine;
   }
   const factor = te ? 1 / k : -k / gammaSquared;
-  self[at] = factor * cothLike;
-  transfer[at] = factor * cschLike;
+  target.self[target.selfAt + at] = factor * cothLike;
+  target.transfer[target.transferAt + at] = factor * cschLike;
 }
+
+/** γL beyond which nothing reaches the other end: e^{−37} is below rounding. */
+const longLine = 37;

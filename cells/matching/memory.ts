@@ -1,6 +1,7 @@
 // What a matcher keeps between calls: couplings that depend on the geometry alone, and sums that depend on band and geometry.
 // Only what a changed profile needs anew is computed.
 
+import { createKernel, type Kernel } from "../math/kernel/kernel.ts";
 import type { ApertureBasis, Side } from "./aperture-basis.ts";
 import type { Aperture, Chain, Guide } from "./chain.ts";
 import { couplings, type RealMatrix } from "./couplings.ts";
@@ -10,6 +11,7 @@ import { type SectionMatrices, sectionMatrices, type WaveBand } from "./section-
 import { taperCouplings, taperGenerator } from "./taper-couplings.ts";
 
 export interface Memory {
+  kernel: Kernel;
   /** at least so many modes */
   table(count: number): ModeTable;
   bases(chain: Chain): ApertureBasis[];
@@ -31,6 +33,7 @@ export function createMemory(): Memory {
   const stores = [matrices, sides, sections];
 
   return {
+    kernel: createKernel(),
     table: tableOf,
     bases({ guides, apertures }) {
       return apertures.map((aperture, i) => {

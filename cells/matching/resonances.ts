@@ -2,8 +2,9 @@
 
 import { speedOfLight } from "../constants.ts";
 import type { Answer } from "./outcome.ts";
+import type { Prepared } from "./prepared.ts";
 import { portReactances } from "./resonance-count.ts";
-import { type Prepared, sweep } from "./sweep.ts";
+import { sweep } from "./sweep.ts";
 
 /** A resonance narrower than the distance of the samples beside it. */
 export interface Resonance {

@@ -58,14 +58,14 @@ export function explicitModes({ radius, modeCount }: Guide, { high }: WaveBand, 
   return count;
 }
 
-/** k·jη0·Y of the modes beyond the explicit ones, at each node of the band. */
+/** k·jη0·Y of the modes beyond the explicit ones, at each node of the band: innermost index the node. */
 export interface SectionMatrices {
   explicit: number;
-  /** [nodes] of [left count²], lower half; absent where the guide has no left aperture */
-  left?: Float64Array[];
-  right?: Float64Array[];
-  /** [nodes] of [left count × right count] */
-  transfer?: Float64Array[];
+  /** [left count × left count × nodes], lower half; absent where the guide has no left aperture */
+  left?: Float64Array;
+  right?: Float64Array;
+  /** [left count × right count × nodes], sign reversed */
+  transfer?: Float64Array;
 }
 
 /**
@@ -79,61 +79,88 @@ export function sectionMatrices(
   table: ModeTable,
 ): SectionMatrices {
   const explicit = explicitModes(guide, band, table);
+  const nodes = band.nodes.length;
   const out: SectionMatrices = { explicit };
-  if (left) out.left = [];
-  if (right) out.right = [];
-  if (left && right) out.transfer = [];
-  const line = { self: new Float64Array(guide.modeCount), transfer: new Float64Array(guide.modeCount) };
+  const size = (a: Side, b: Side): Float64Array => new Float64Array(a.modes.columns * b.modes.columns * nodes);
+  if (left) out.left = size(left, left);
+  if (right) out.right = left?.modes === right.modes ? out.left! : size(right, right);
+  if (left && right) out.transfer = size(left, right);
+  const line = {
+    self: new Float64Array(guide.modeCount),
+    transfer: new Float64Array(guide.modeCount),
+    selfAt: 0,
+    transferAt: 0,
+  };
   const length = left && right ? guide.length : Number.POSITIVE_INFINITY;
-  for (const k of band.nodes) {
+  band.nodes.forEach((k, node) => {
     for (let n = explicit; n < guide.modeCount; n++) {
       const gammaSquared = guardedGammaSquared(table.chi[n]! / guide.radius, k);
-      writeLine(isTE(n), gammaSquared, { k, length }, line, n);
+      writeLine(isTE(n), gammaSquared, k, length, line, n);
       line.self[n]! *= k;
-      line.transfer[n]! *= k;
+      line.transfer[n]! *= -k;
     }
-    if (left) out.left!.push(selfMatrix(left, explicit, line.self, k));
-    if (right)
-      out.right!.push(left?.modes === right.modes ? out.left!.at(-1)! : selfMatrix(right, explicit, line.self, k));
-    if (left && right) out.transfer!.push(transferMatrix(left, right, explicit, line.transfer));
-  }
+    const at = { node, nodes, from: explicit };
+    if (left) addSelf(out.left!, left, line.self, k, at);
+    if (right && out.right !== out.left) addSelf(out.right!, right, line.self, k, at);
+    if (left && right) addTransfer(out.transfer!, left, right, line.transfer, at);
+  });
   return out;
 }
 
-function selfMatrix({ modes, tail }: Side, from: number, weights: Float64Array, k: number): Float64Array {
+interface AtNode {
+  node: number;
+  nodes: number;
+  /** first mode of the sum */
+  from: number;
+}
+
+function addSelf(
+  out: Float64Array,
+  { modes, tail }: Side,
+  weights: Float64Array,
+  k: number,
+  { node, nodes, from }: AtNode,
+): void {
   const { rows, columns, values } = modes;
-  const out = new Float64Array(columns * columns);
   for (let n = from; n < rows; n++) {
     const row = n * columns;
+    const weight = weights[n]!;
     for (let p = 0; p < columns; p++) {
-      const factor = values[row + p]! * weights[n]!;
+      const factor = values[row + p]! * weight;
       if (factor === 0) continue;
-      for (let q = 0; q <= p; q++) out[p * columns + q]! += factor * values[row + q]!;
+      let to = p * columns * nodes + node;
+      for (let q = 0; q <= p; q++, to += nodes) out[to]! += factor * values[row + q]!;
     }
   }
-  if (tail) {
-    const forTE = 1 / tail.radius;
-    const forTM = -k * k * tail.radius;
-    for (let p = 0; p < columns; p++) {
-      for (let q = 0; q <= p; q++) {
-        out[p * columns + q]! += forTE * tail.te[p]! * tail.te[q]! + forTM * tail.tm[p]! * tail.tm[q]!;
-      }
+  if (!tail) return;
+  const forTE = 1 / tail.radius;
+  const forTM = -k * k * tail.radius;
+  for (let p = 0; p < columns; p++) {
+    for (let q = 0; q <= p; q++) {
+      out[(p * columns + q) * nodes + node]! += forTE * tail.te[p]! * tail.te[q]! + forTM * tail.tm[p]! * tail.tm[q]!;
     }
   }
-  return out;
 }
 
-function transferMatrix(left: Side, right: Side, from: number, weights: Float64Array): Float64Array {
+function addTransfer(
+  out: Float64Array,
+  left: Side,
+  right: Side,
+  weights: Float64Array,
+  { node, nodes, from }: AtNode,
+): void {
   const P = left.modes.columns;
   const Q = right.modes.columns;
-  const out = new Float64Array(P * Q);
   const rows = Math.min(left.modes.rows, right.modes.rows);
   for (let n = from; n < rows; n++) {
+    const weight = weights[n]!;
+    // Evanescent modes that don't reach the other end.
+    if (weight === 0) continue;
     for (let p = 0; p < P; p++) {
-      const factor = left.modes.values[n * P + p]! * weights[n]!;
+      const factor = left.modes.values[n * P + p]! * weight;
       if (factor === 0) continue;
-      for (let q = 0; q < Q; q++) out[p * Q + q]! += factor * right.modes.values[n * Q + q]!;
+      let to = p * Q * nodes + node;
+      for (let q = 0; q < Q; q++, to += nodes) out[to]! += factor * right.modes.values[n * Q + q]!;
     }
   }
-  return out;
 }

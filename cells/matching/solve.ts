@@ -6,11 +6,12 @@ import { chainOf, type Fineness } from "./chain.ts";
 import type { Memory } from "./memory.ts";
 import type { Answer } from "./outcome.ts";
 import type { Piece } from "./pieces.ts";
+import type { Prepared } from "./prepared.ts";
 import { type WaveBand, waveBand } from "./section-matrices.ts";
-import { type Prepared, sweep } from "./sweep.ts";
+import { sweep } from "./sweep.ts";
 
-/** Frequencies solved side by side: their matrices stay in the processor's nearest cache. */
-const lanes = 8;
+/** Frequencies solved between two reports of progress. */
+const portion = 8;
 
 /** Power that must not be missing, and rounding that must not be magnified more: the frequency is solved again beyond. */
 const acceptedPowerError = 1e-10;
@@ -25,7 +26,7 @@ export function prepare(memory: Memory, pieces: Piece[], fineness: Fineness, ban
   const bases = memory.bases(chain);
   const sections = memory.sections(chain, bases, band);
   const most = chain.guides.reduce((count, { modeCount }) => Math.max(count, modeCount), 0);
-  return { chain, bases, sections, band, table: memory.table(most) };
+  return { chain, bases, sections, band, table: memory.table(most), kernel: memory.kernel };
 }
 
 export function bandOf(frequencies: number[]): WaveBand {
@@ -38,12 +39,12 @@ export function bandOf(frequencies: number[]): WaveBand {
  */
 export function solveBand(prepared: Prepared, frequencies: number[], progress?: (share: number) => void): Answer[] {
   const answers: Answer[] = [];
-  for (let i = 0; i < frequencies.length; i += lanes) {
-    const some = frequencies.slice(i, i + lanes);
+  for (let i = 0; i < frequencies.length; i += portion) {
+    const some = frequencies.slice(i, i + portion);
     sweep(prepared, some).forEach((answer, lane) => {
       answers.push(isSound(answer) ? answer : soundest(prepared, some[lane]!, answer));
     });
-    progress?.(Math.min(1, (i + lanes) / frequencies.length));
+    progress?.(Math.min(1, (i + portion) / frequencies.length));
   }
   return answers;
 }

@@ -1,41 +1,19 @@
-// The whole horn at a few frequencies at once: real elimination from the throat to the mouth, then the ports.
+// The whole horn at two frequencies at once: real elimination from the throat to the mouth, then the ports.
 //
 // Unknowns are the fields in the apertures between guides. Each guide adds its lines' admittances, summed over its modes
 // in the basis of its two apertures; the field of an aperture is eliminated before that of the next one. The travelling
 // modes of throat and mouth stay outside as ports, so that everything inside is real (lossless, times jη0).
 
 import { speedOfLight } from "../constants.ts";
-import type { ApertureBasis } from "./aperture-basis.ts";
-import type { Chain, Guide } from "./chain.ts";
+import type { Guide } from "./chain.ts";
 import type { RealMatrix } from "./couplings.ts";
-import { addGram, addGramLower, addScaled, eliminate, solveUpper } from "./elimination.ts";
 import { guardedGammaSquared, matchedAdmittance, writeLine } from "./line.ts";
+import { loadedHorn } from "./loaded-horn.ts";
 import { isTE, type ModeTable } from "./mode-table.ts";
 import { type Answer, answerAt } from "./outcome.ts";
+import type { Prepared } from "./prepared.ts";
 import { shortedResonances } from "./resonance-count.ts";
-import { nodeWeights, type SectionMatrices, type WaveBand } from "./section-matrices.ts";
-
-/** A horn ready for any frequency of its band. */
-export interface Prepared {
-  chain: Chain;
-  bases: ApertureBasis[];
-  sections: SectionMatrices[];
-  band: WaveBand;
-  table: ModeTable;
-}
-
-/**
- * Of the size of a travelling mode's admittance: without it a horn of small steps would be nearly singular inside. Not a round
- * number, so that no symmetric horn meets a resonance.
- */
-const defaultPortTerm = 0.73;
-
-/** Modes that travel at the highest wave number. */
-export function portCount({ radius, modeCount }: Guide, highest: number, table: ModeTable): number {
-  let count = 0;
-  while (count < modeCount && table.chi[count]! < highest * radius) count++;
-  return count;
-}
+import { nodeWeights } from "./section-matrices.ts";
 
 export interface SweepOptions {
   /** a real admittance that the ports hold inside the elimination and not outside: moves its resonances */
@@ -44,70 +22,106 @@ export interface SweepOptions {
   incident?: number;
 }
 
-export function sweep(
+/**
+ * Of the size of a travelling mode's admittance: without it a horn of small steps would be nearly singular inside. Not a round
+ * number, so that no symmetric horn meets a resonance.
+ */
+const defaultPortTerm = 0.73;
+
+/** Answers at the frequencies, in order, two at a time. */
+export function sweep(prepared: Prepared, frequencies: number[], options: SweepOptions = {}): Answer[] {
+  const answers: Answer[] = [];
+  for (let i = 0; i < frequencies.length; i += 2) {
+    const pair = [frequencies[i]!, frequencies[i + 1] ?? frequencies[i]!];
+    answers.push(...sweepPair(prepared, pair, options));
+  }
+  return answers.slice(0, frequencies.length);
+}
+
+/** Modes that travel at the highest wave number. */
+function portCount({ radius, modeCount }: Guide, highest: number, table: ModeTable): number {
+  let count = 0;
+  while (count < modeCount && table.chi[count]! < highest * radius) count++;
+  return count;
+}
+
+const lanes = 2;
+
+function sweepPair(
   prepared: Prepared,
   frequencies: number[],
-  { portTerm = defaultPortTerm, incident = 0 }: SweepOptions = {},
+  { portTerm = defaultPortTerm, incident = 0 }: SweepOptions,
 ): Answer[] {
-  const { chain, bases, sections, band, table } = prepared;
+  const { chain, bases, sections, band, table, kernel } = prepared;
   const { guides } = chain;
-  const lanes = frequencies.length;
-  const waveNumbers = frequencies.map((f) => (2 * Math.PI * f) / speedOfLight);
-  const weights = nodeWeightLanes();
   const first = guides[0]!;
   const last = guides.at(-1)!;
   const inPorts = Math.max(1, portCount(first, band.high, table));
   const outPorts = portCount(last, band.high, table);
-
+  const horn = loadedHorn(prepared, inPorts + outPorts);
+  const memory = kernel.memory();
+  const nodes = band.nodes.length;
+  const waveNumbers = frequencies.map((f) => (2 * Math.PI * f) / speedOfLight);
+  waveNumbers.forEach((k, lane) => {
+    nodeWeights(band, k).forEach((weight, m) => {
+      memory[horn.weights / 8 + lanes * m + lane] = weight;
+    });
+  });
   const cancellation = new Float64Array(lanes);
   const negativePivots = new Int32Array(lanes);
+  const { columns: x, scratch } = horn;
 
-  // Unknowns of the block at hand: its aperture's functions. `t` holds what eliminating it leaves: the next aperture's
-  // block, then the throat's ports, which every block still sees.
+  // The block at hand: the square `s` of its aperture's functions, its rows `stride` apart. Eliminating it leaves in `t` the
+  // next aperture's block and the throat's ports, which every block still sees.
+  let [s, t] = horn.squares;
   let count = bases[0]!.count;
-  let s = new Float64Array(count * count * lanes);
-  addEnd(s, count, sections[0]!.right!, bases[0]!.left.modes, first, inPorts);
-  let before: { t: Float64Array; size: number } | undefined;
+  let stride = count;
+  writeEnd(first, sections[0]!.explicit, inPorts);
+  kernel.combine(s, stride, horn.sections[0]!.right, count, count, nodes, horn.weights, 1, 0);
+  const begin = horn.apertures[0]!.left;
+  kernel.gram(s, stride, begin, count, begin, count, sections[0]!.explicit, horn.self, 1);
 
   for (let a = 0; a < bases.length; a++) {
     const { right } = bases[a]!;
     const guide = guides[a + 1]!;
-    const section = sections[a + 1]!;
+    const { explicit } = sections[a + 1]!;
+    const here = horn.sections[a + 1]!;
+    const near = horn.apertures[a]!.right;
     const next = bases[a + 1];
     const nextCount = next ? next.count : outPorts;
     const size = nextCount + inPorts;
-    const x = new Float64Array(count * size * lanes);
-    const t = new Float64Array(size * size * lanes);
+    const firstPort = t / 8 + lanes * nextCount * size;
     if (next) {
-      const line = explicitLines(guide, section.explicit);
-      section.left!.forEach((matrix, m) => {
-        addScaled({ out: s, columns: count }, { values: matrix, rows: count, columns: count }, weights[m]!, true);
-        const transfer = { values: section.transfer![m]!, rows: count, columns: nextCount };
-        addScaled({ out: x, columns: size }, transfer, weights[m]!, false, -1);
-        const onward = { values: section.right![m]!, rows: nextCount, columns: nextCount };
-        addScaled({ out: t, columns: size }, onward, weights[m]!, true);
-      });
-      addGramLower({ out: s, columns: count }, right.modes, line.self, section.explicit, lanes);
-      addGram({ out: x, columns: size }, right.modes, next.left.modes, line.transfer, section.explicit, lanes, -1);
-      addGramLower({ out: t, columns: size }, next.left.modes, line.self, section.explicit, lanes);
+      const far = horn.apertures[a + 1]!.left;
+      writeLines(guide, explicit);
+      kernel.combine(x, size, here.transfer, count, nextCount, nodes, horn.weights, 0, 0);
+      kernel.gram(x, size, near, count, far, nextCount, explicit, horn.transfer, 0);
+      kernel.combine(t, size, here.right, nextCount, nextCount, nodes, horn.weights, 1, 0);
+      kernel.gram(t, size, far, nextCount, far, nextCount, explicit, horn.self, 1);
+      memory.fill(0, firstPort, firstPort + lanes * inPorts * size);
     } else {
-      addEnd(s, count, section.left!, right.modes, guide, outPorts);
-      setPortColumns(x, size, 0, right.modes, outPorts);
+      writeEnd(guide, explicit, outPorts);
+      writePortColumns(size, 0, right.modes, outPorts);
+      memory.fill(0, t / 8, t / 8 + lanes * size * size);
     }
-    if (before) carryPorts(before, count, x, t, nextCount, size);
-    else setPortColumns(x, size, nextCount, bases[0]!.left.modes, inPorts);
-    const diagonal = diagonalOf(s, count);
-    eliminate(s, x, t, count, size, lanes);
-    notePivots(diagonal, s, count);
+    kernel.combine(s, stride, here.left, count, count, nodes, horn.weights, 1, 1);
+    kernel.gram(s, stride, near, count, near, count, explicit, horn.self, 1);
+    if (a === 0) writePortColumns(size, nextCount, bases[0]!.left.modes, inPorts);
+    else carryPorts(nextCount, size);
+    const diagonal = diagonalOf();
+    kernel.eliminate(s, stride, x, t, scratch, count, size);
+    notePivots(diagonal);
     if (!next) {
-      solveUpper(s, x, count, size, lanes);
+      kernel.solveUpper(s, stride, x, count, size);
+      const columns = memory.slice(x / 8, x / 8 + lanes * count * size);
+      const ports = memory.slice(t / 8, t / 8 + lanes * size * size);
       return waveNumbers.map((k, lane) =>
         answerAt({
           k,
           lane,
           lanes,
-          x,
-          t,
+          x: columns,
+          t: ports,
           count,
           first,
           last,
@@ -122,30 +136,27 @@ export function sweep(
         }),
       );
     }
-    s = new Float64Array(nextCount * nextCount * lanes);
-    for (let p = 0; p < nextCount; p++) {
-      const from = p * size * lanes;
-      s.set(t.subarray(from, from + (p + 1) * lanes), p * nextCount * lanes);
-    }
-    before = { t, size };
+    [s, t] = [t, s];
+    stride = size;
     count = nextCount;
   }
   throw new Error("sweep: a chain must have an aperture");
 
-  function diagonalOf(s: Float64Array, count: number): Float64Array {
+  function diagonalOf(): Float64Array {
     const out = new Float64Array(count * lanes);
     for (let p = 0; p < count; p++) {
-      const from = (p * count + p) * lanes;
-      out.set(s.subarray(from, from + lanes), p * lanes);
+      const from = s / 8 + lanes * p * (stride + 1);
+      out[lanes * p] = memory[from]!;
+      out[lanes * p + 1] = memory[from + 1]!;
     }
     return out;
   }
 
   /** How much larger a diagonal element was than the pivot that is left of it: so many digits are gone. And the signs. */
-  function notePivots(before: Float64Array, s: Float64Array, count: number): void {
+  function notePivots(before: Float64Array): void {
     for (let p = 0; p < count; p++) {
       for (let l = 0; l < lanes; l++) {
-        const inverse = s[(p * count + p) * lanes + l]!;
+        const inverse = memory[s / 8 + lanes * p * (stride + 1) + l]!;
         if (inverse < 0) negativePivots[l]!++;
         const ratio = Math.abs(before[p * lanes + l]! * inverse);
         if (!(ratio <= cancellation[l]!)) cancellation[l] = ratio;
@@ -153,74 +164,50 @@ export function sweep(
     }
   }
 
-  function nodeWeightLanes(): Float64Array[] {
-    const perLane = waveNumbers.map((k) => nodeWeights(band, k));
-    return Array.from(band.nodes, (_, m) => Float64Array.from(perLane, (w) => w[m]!));
-  }
-
-  /** The matched guide at one end of the horn: its modes that are no ports. */
-  function addEnd(
-    out: Float64Array,
-    columns: number,
-    high: Float64Array[],
-    modes: RealMatrix,
-    guide: Guide,
-    ports: number,
-  ): void {
-    const explicit = guide === first ? sections[0]!.explicit : sections.at(-1)!.explicit;
-    const loads = new Float64Array(explicit * lanes);
+  /** Admittances of the matched guide at one end of the horn: its explicit modes that are no ports. */
+  function writeEnd(guide: Guide, explicit: number, ports: number): void {
     for (let n = 0; n < explicit; n++) {
-      for (let l = 0; l < lanes; l++) {
-        const k = waveNumbers[l]!;
-        loads[n * lanes + l] =
-          n < ports ? portTerm : matchedAdmittance(isTE(n), guardedGammaSquared(table.chi[n]! / guide.radius, k), k).re;
-      }
+      waveNumbers.forEach((k, lane) => {
+        const gammaSquared = guardedGammaSquared(table.chi[n]! / guide.radius, k);
+        memory[horn.self / 8 + lanes * n + lane] =
+          n < ports ? portTerm : matchedAdmittance(isTE(n), gammaSquared, k).re;
+      });
     }
-    high.forEach((values, m) => {
-      addScaled({ out, columns }, { values, rows: columns, columns }, weights[m]!, true);
-    });
-    addGramLower({ out, columns }, modes, loads, explicit, lanes);
   }
 
-  function explicitLines({ radius, length }: Guide, explicit: number): { self: Float64Array; transfer: Float64Array } {
-    const out = { self: new Float64Array(explicit * lanes), transfer: new Float64Array(explicit * lanes) };
+  function writeLines({ radius, length }: Guide, explicit: number): void {
+    const out = { self: memory, transfer: memory, selfAt: horn.self / 8, transferAt: horn.transfer / 8 };
     for (let n = 0; n < explicit; n++) {
       const cutoffNumber = table.chi[n]! / radius;
       for (let l = 0; l < lanes; l++) {
         const k = waveNumbers[l]!;
-        writeLine(isTE(n), guardedGammaSquared(cutoffNumber, k), { k, length }, out, n * lanes + l);
+        writeLine(isTE(n), guardedGammaSquared(cutoffNumber, k), k, length, out, lanes * n + l);
+        memory[out.transferAt + lanes * n + l]! *= -1;
       }
     }
-    return out;
   }
 
   /** x[p, at + q] = −(function p in port mode q) */
-  function setPortColumns(x: Float64Array, size: number, at: number, modes: RealMatrix, ports: number): void {
+  function writePortColumns(size: number, at: number, modes: RealMatrix, ports: number): void {
     for (let p = 0; p < modes.columns; p++) {
       for (let q = 0; q < ports; q++) {
-        const from = (p * size + at + q) * lanes;
-        x.fill(-modes.values[q * modes.columns + p]!, from, from + lanes);
+        const to = x / 8 + lanes * (p * size + at + q);
+        memory[to] = memory[to + 1] = -modes.values[q * modes.columns + p]!;
       }
     }
   }
 
   /** The throat's ports as the block before left them: their rows become columns of x, their own square goes on in t. */
-  function carryPorts(
-    from: { t: Float64Array; size: number },
-    count: number,
-    x: Float64Array,
-    t: Float64Array,
-    nextCount: number,
-    size: number,
-  ): void {
+  function carryPorts(nextCount: number, size: number): void {
     for (let q = 0; q < inPorts; q++) {
-      const row = (count + q) * from.size;
+      const row = s / 8 + lanes * (count + q) * stride;
       for (let p = 0; p < count; p++) {
-        const at = (row + p) * lanes;
-        x.set(from.t.subarray(at, at + lanes), (p * size + nextCount + q) * lanes);
+        const to = x / 8 + lanes * (p * size + nextCount + q);
+        memory[to] = memory[row + lanes * p]!;
+        memory[to + 1] = memory[row + lanes * p + 1]!;
       }
-      const at = (row + count) * lanes;
-      t.set(from.t.subarray(at, at + (q + 1) * lanes), ((nextCount + q) * size + nextCount) * lanes);
+      const to = t / 8 + lanes * ((nextCount + q) * size + nextCount);
+      for (let i = 0; i < lanes * (q + 1); i++) memory[to + i] = memory[row + lanes * count + i]!;
     }
   }
 }

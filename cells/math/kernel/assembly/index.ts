@@ -1,0 +1,244 @@
+// Compiled to WebAssembly by build/kernel.mjs; the plain TypeScript of the same functions is ../twin.ts.
+//
+// Small real systems of two frequencies side by side: every matrix element is a pair of doubles, one v128, at
+// (row·columns + column)·16 bytes. Symmetric matrices: lower half. Matrices without frequency are plain doubles.
+// Addresses are bytes. Nothing is checked.
+
+// @ts-nocheck: AssemblyScript's types are not TypeScript's.
+
+function at(base: usize, index: i32): usize {
+  return base + ((<usize>index) << 4);
+}
+
+/** out[p, q] = Σ_m matrix[p, q, m]·weight[m], or += where `add`; of the lower half (q ≤ p) where `lower`. */
+export function combine(
+  out: usize,
+  stride: i32,
+  matrix: usize,
+  rows: i32,
+  columns: i32,
+  nodes: i32,
+  weights: usize,
+  lower: i32,
+  add: i32,
+): void {
+  for (let p = 0; p < rows; p++) {
+    const end = lower ? p + 1 : columns;
+    let from = matrix + ((<usize>(p * columns * nodes)) << 3);
+    let to = at(out, p * stride);
+    for (let q = 0; q < end; q++) {
+      let sum = f64x2.mul(v128.load64_splat(from), v128.load(weights));
+      for (let m = 1; m < nodes; m++) {
+        sum = f64x2.add(sum, f64x2.mul(v128.load64_splat(from + ((<usize>m) << 3)), v128.load(at(weights, m))));
+      }
+      if (add) sum = f64x2.add(sum, v128.load(to));
+      v128.store(to, sum);
+      from += (<usize>nodes) << 3;
+      to += 16;
+    }
+  }
+}
+
+/** out[p, q] += Σ_n a[n, p]·b[n, q]·w[n]; of the lower half where `lower`. Zeros in a are passed over. */
+export function gram(
+  out: usize,
+  stride: i32,
+  a: usize,
+  aColumns: i32,
+  b: usize,
+  bColumns: i32,
+  rows: i32,
+  w: usize,
+  lower: i32,
+): void {
+  for (let n = 0; n < rows; n++) {
+    const weight = v128.load(at(w, n));
+    const aRow = a + ((<usize>(n * aColumns)) << 3);
+    const bRow = b + ((<usize>(n * bColumns)) << 3);
+    for (let p = 0; p < aColumns; p++) {
+      const value = load<f64>(aRow + ((<usize>p) << 3));
+      if (value === 0) continue;
+      const factor = f64x2.mul(f64x2.splat(value), weight);
+      const end = lower ? p + 1 : bColumns;
+      let to = at(out, p * stride);
+      let from = bRow;
+      for (let q = 0; q < end; q++) {
+        v128.store(to, f64x2.add(v128.load(to), f64x2.mul(factor, v128.load64_splat(from))));
+        to += 16;
+        from += 8;
+      }
+    }
+  }
+}
+
+/**
+ * s ← its LDLᵀ in place, without pivoting: unit L below the diagonal, 1/D on it. x ← L⁻¹x, t ← t − xᵀD⁻¹x.
+ * s [P × P, rows `sStride` apart], x and scratch [P × Q], t [Q × Q]. What t holds above its diagonal is spoilt.
+ */
+export function eliminate(s: usize, sStride: i32, x: usize, t: usize, scratch: usize, P: i32, Q: i32): void {
+  factor(s, sStride, P);
+  forward(s, sStride, x, P, Q);
+  for (let k = 0; k < P; k++) {
+    const inverse = v128.load(at(s, k * sStride + k));
+    let from = at(x, k * Q);
+    let to = at(scratch, k * Q);
+    for (let q = 0; q < Q; q++) {
+      v128.store(to, f64x2.mul(v128.load(from), inverse));
+      from += 16;
+      to += 16;
+    }
+  }
+  update(x, scratch, t, P, Q);
+}
+
+function factor(s: usize, stride: i32, P: i32): void {
+  for (let i = 0; i < P; i++) {
+    const row = at(s, i * stride);
+    for (let j = 0; j < i; j++) {
+      const other = at(s, j * stride);
+      let sum = v128.load(at(row, j));
+      for (let k = 0; k < j; k++) sum = f64x2.sub(sum, f64x2.mul(v128.load(at(row, k)), v128.load(at(other, k))));
+      v128.store(at(row, j), sum);
+    }
+    let pivot = v128.load(at(row, i));
+    for (let k = 0; k < i; k++) {
+      const raw = v128.load(at(row, k));
+      const scaled = f64x2.mul(raw, v128.load(at(s, k * stride + k)));
+      v128.store(at(row, k), scaled);
+      pivot = f64x2.sub(pivot, f64x2.mul(raw, scaled));
+    }
+    v128.store(at(row, i), f64x2.div(f64x2.splat(1), pivot));
+  }
+}
+
+/** Two rows at a time, four columns at a time. */
+function forward(s: usize, stride: i32, x: usize, P: i32, Q: i32): void {
+  let i = 0;
+  for (; i + 1 < P; i += 2) {
+    const rowA = at(s, i * stride);
+    const rowB = at(s, (i + 1) * stride);
+    const link = v128.load(at(rowB, i));
+    let q = 0;
+    for (; q + 3 < Q; q += 4) {
+      const toA = at(x, i * Q + q);
+      const toB = at(x, (i + 1) * Q + q);
+      let a0 = v128.load(toA);
+      let a1 = v128.load(toA, 16);
+      let a2 = v128.load(toA, 32);
+      let a3 = v128.load(toA, 48);
+      let b0 = v128.load(toB);
+      let b1 = v128.load(toB, 16);
+      let b2 = v128.load(toB, 32);
+      let b3 = v128.load(toB, 48);
+      let from = at(x, q);
+      for (let k = 0; k < i; k++) {
+        const fa = v128.load(at(rowA, k));
+        const fb = v128.load(at(rowB, k));
+        const y0 = v128.load(from);
+        const y1 = v128.load(from, 16);
+        const y2 = v128.load(from, 32);
+        const y3 = v128.load(from, 48);
+        a0 = f64x2.sub(a0, f64x2.mul(fa, y0));
+        a1 = f64x2.sub(a1, f64x2.mul(fa, y1));
+        a2 = f64x2.sub(a2, f64x2.mul(fa, y2));
+        a3 = f64x2.sub(a3, f64x2.mul(fa, y3));
+        b0 = f64x2.sub(b0, f64x2.mul(fb, y0));
+        b1 = f64x2.sub(b1, f64x2.mul(fb, y1));
+        b2 = f64x2.sub(b2, f64x2.mul(fb, y2));
+        b3 = f64x2.sub(b3, f64x2.mul(fb, y3));
+        from += (<usize>Q) << 4;
+      }
+      v128.store(toA, a0);
+      v128.store(toA, a1, 16);
+      v128.store(toA, a2, 32);
+      v128.store(toA, a3, 48);
+      v128.store(toB, f64x2.sub(b0, f64x2.mul(link, a0)));
+      v128.store(toB, f64x2.sub(b1, f64x2.mul(link, a1)), 16);
+      v128.store(toB, f64x2.sub(b2, f64x2.mul(link, a2)), 32);
+      v128.store(toB, f64x2.sub(b3, f64x2.mul(link, a3)), 48);
+    }
+    for (; q < Q; q++) {
+      forwardOne(rowA, x, i, q, Q);
+      forwardOne(rowB, x, i + 1, q, Q);
+    }
+  }
+  if (i < P) for (let q = 0; q < Q; q++) forwardOne(at(s, i * stride), x, i, q, Q);
+}
+
+function forwardOne(row: usize, x: usize, i: i32, q: i32, Q: i32): void {
+  let sum = v128.load(at(x, i * Q + q));
+  for (let k = 0; k < i; k++) sum = f64x2.sub(sum, f64x2.mul(v128.load(at(row, k)), v128.load(at(x, k * Q + q))));
+  v128.store(at(x, i * Q + q), sum);
+}
+
+/** t[p, q] −= Σ_k z[k, p]·x[k, q], blocks of four by two; the block on the diagonal goes above it. */
+function update(x: usize, z: usize, t: usize, P: i32, Q: i32): void {
+  const step = (<usize>Q) << 4;
+  let p = 0;
+  for (; p + 3 < Q; p += 4) {
+    const end = p + 4;
+    for (let q = 0; q < end; q += 2) {
+      let zp = at(z, p);
+      let xq = at(x, q);
+      let a0 = f64x2.splat(0);
+      let a1 = f64x2.splat(0);
+      let b0 = f64x2.splat(0);
+      let b1 = f64x2.splat(0);
+      let c0 = f64x2.splat(0);
+      let c1 = f64x2.splat(0);
+      let d0 = f64x2.splat(0);
+      let d1 = f64x2.splat(0);
+      for (let k = 0; k < P; k++) {
+        const x0 = v128.load(xq);
+        const x1 = v128.load(xq, 16);
+        const za = v128.load(zp);
+        const zb = v128.load(zp, 16);
+        const zc = v128.load(zp, 32);
+        const zd = v128.load(zp, 48);
+        a0 = f64x2.add(a0, f64x2.mul(za, x0));
+        a1 = f64x2.add(a1, f64x2.mul(za, x1));
+        b0 = f64x2.add(b0, f64x2.mul(zb, x0));
+        b1 = f64x2.add(b1, f64x2.mul(zb, x1));
+        c0 = f64x2.add(c0, f64x2.mul(zc, x0));
+        c1 = f64x2.add(c1, f64x2.mul(zc, x1));
+        d0 = f64x2.add(d0, f64x2.mul(zd, x0));
+        d1 = f64x2.add(d1, f64x2.mul(zd, x1));
+        zp += step;
+        xq += step;
+      }
+      take(t, p * Q + q, a0, a1);
+      take(t, (p + 1) * Q + q, b0, b1);
+      take(t, (p + 2) * Q + q, c0, c1);
+      take(t, (p + 3) * Q + q, d0, d1);
+    }
+  }
+  for (; p < Q; p++) {
+    for (let q = 0; q <= p; q++) {
+      let sum = v128.load(at(t, p * Q + q));
+      for (let k = 0; k < P; k++) {
+        sum = f64x2.sub(sum, f64x2.mul(v128.load(at(z, k * Q + p)), v128.load(at(x, k * Q + q))));
+      }
+      v128.store(at(t, p * Q + q), sum);
+    }
+  }
+}
+
+function take(t: usize, index: i32, first: v128, second: v128): void {
+  const to = at(t, index);
+  v128.store(to, f64x2.sub(v128.load(to), first));
+  v128.store(to, f64x2.sub(v128.load(to, 16), second), 16);
+}
+
+/** x ← L⁻ᵀD⁻¹x with s as `eliminate` leaves it: completes x to S⁻¹x. */
+export function solveUpper(s: usize, stride: i32, x: usize, P: i32, Q: i32): void {
+  for (let k = P - 1; k >= 0; k--) {
+    const inverse = v128.load(at(s, k * stride + k));
+    for (let q = 0; q < Q; q++) {
+      let sum = f64x2.mul(v128.load(at(x, k * Q + q)), inverse);
+      for (let i = k + 1; i < P; i++) {
+        sum = f64x2.sub(sum, f64x2.mul(v128.load(at(s, i * stride + k)), v128.load(at(x, i * Q + q))));
+      }
+      v128.store(at(x, k * Q + q), sum);
+    }
+  }
+}

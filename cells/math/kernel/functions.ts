@@ -1,0 +1,39 @@
+// What the kernel does, in WebAssembly and in its TypeScript twin alike.
+
+/**
+ * Addresses are bytes in the arena. A matrix with frequency holds pairs of doubles, one for each of two frequencies, row-major;
+ * one without holds doubles. Symmetric ones use their lower half. 0 and 1 stand for no and yes. Nothing is checked.
+ */
+export interface KernelFunctions {
+  /** out[p, q] = Σ_m matrix[p, q, m]·weight[m] (matrix without frequency), or += where `add`; its lower half where `lower` */
+  combine(
+    out: number,
+    stride: number,
+    matrix: number,
+    rows: number,
+    columns: number,
+    nodes: number,
+    weights: number,
+    lower: 0 | 1,
+    add: 0 | 1,
+  ): void;
+  /** out[p, q] += Σ_n a[n, p]·b[n, q]·w[n] (a, b without frequency); its lower half where `lower` */
+  gram(
+    out: number,
+    stride: number,
+    a: number,
+    aColumns: number,
+    b: number,
+    bColumns: number,
+    rows: number,
+    w: number,
+    lower: 0 | 1,
+  ): void;
+  /**
+   * s [P × P] ← its LDLᵀ without pivoting: unit L below the diagonal, 1/D on it. x [P × Q] ← L⁻¹x; t [Q × Q] ← t − xᵀD⁻¹x.
+   * What stands above the diagonal of t may be spoilt. scratch [P × Q].
+   */
+  eliminate(s: number, sStride: number, x: number, t: number, scratch: number, P: number, Q: number): void;
+  /** x [P × Q] ← L⁻ᵀD⁻¹x with s as `eliminate` leaves it: completes x to S⁻¹x */
+  solveUpper(s: number, sStride: number, x: number, P: number, Q: number): void;
+}
