@@ -30,6 +30,8 @@ export {
   te11PeakField,
   usualMarginDb,
 } from "./horn/air-breakdown.ts";
+export * from "./horn/custom/own-band.ts";
+export { readProfile } from "./horn/custom/read-profile.ts";
 export * from "./horn/index.ts";
 // Workshop: what it takes to build one of them, or an own profile.
 export {

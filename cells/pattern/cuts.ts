@@ -3,6 +3,7 @@
 import { requireNumber, requirePositive } from "../check.ts";
 import type { Complex, ComplexVector } from "../math/complex.ts";
 import { brentMinimum, brentRoot } from "../math/roots.ts";
+import { toDeg } from "../units.ts";
 import type { FeedPattern } from "./feed-pattern.ts";
 import { patternInterpolant } from "./interpolant.ts";
 import { boresightIntensity } from "./power.ts";
@@ -36,6 +37,30 @@ function combined(where: string, pattern: FeedPattern, sign: 1 | -1): ComplexVec
   return {
     re: ePlane.re.map((e, i) => (e + sign * hPlane.re[i]!) / 2),
     im: ePlane.im.map((e, i) => (e + sign * hPlane.im[i]!) / 2),
+  };
+}
+
+/** The cuts as levels, dB against boresight copolar (−300 stands for zero), [thetaCount]; theta in degrees. */
+export interface CutLevels {
+  thetaDeg: number[];
+  ePlaneDb: number[];
+  hPlaneDb: number[];
+  /** 45° plane, Ludwig's third definition */
+  copolar45Db: number[];
+  crossPolar45Db: number[];
+}
+
+/** Levels of both principal planes and of the 45° plane at every angle of the pattern. @throws {RangeError} not a pattern */
+export function cutLevels(pattern: FeedPattern): CutLevels {
+  const reference = boresightIntensity(pattern);
+  const levels = ({ re, im }: ComplexVector): number[] =>
+    Array.from(re, (value, i) => toLevelDb((value ** 2 + im[i]! ** 2) / reference));
+  return {
+    thetaDeg: Array.from(pattern.theta, toDeg),
+    ePlaneDb: levels(pattern.ePlane),
+    hPlaneDb: levels(pattern.hPlane),
+    copolar45Db: levels(copolar45(pattern)),
+    crossPolar45Db: levels(crossPolar45(pattern)),
   };
 }
 

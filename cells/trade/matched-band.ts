@@ -1,7 +1,7 @@
 // One horn in one dish over the band, by mode matching of its actual inner wall.
 
 import type { Candidate } from "../horn/index.ts";
-import { type BandAnalysis, bandAnalysis, type Convergence } from "../matching/index.ts";
+import { type BandAnalysis, bandAnalysis, type Convergence, type Resonance } from "../matching/index.ts";
 import type { FeedPattern } from "../pattern/feed-pattern.ts";
 import type { ApertureModes } from "../radiation/aperture-modes.ts";
 import { aperturePattern } from "../radiation/aperture-pattern.ts";
@@ -31,6 +31,8 @@ export type SweptMatchedBand = Extract<BandResult, { feasible: true }> & {
   s11: { re: number; im: number }[];
   /** amplitude of TM11 over that of TE11 at the mouth, [count], as `frequencies` */
   modeRatio: { re: number; im: number }[];
+  /** too narrow for the frequencies asked for */
+  resonances: Resonance[];
   /** largest |1 − all that travels away| over the band */
   powerBalance: number;
   convergence: Convergence;
@@ -63,15 +65,17 @@ export function matchedOverBand(
   const patterns = analysis.apertureModes.map((modes) => aperturePattern(modes));
   const band = overBand(candidate, dish, {
     ...within,
-    patternAt: (frequency) => patterns[nearest(frequencies, frequency)]!,
+    patternAt: (frequency) => patterns[nearest(analysis.frequencies, frequency)]!,
     reflectionAt: (frequency) => {
-      const { re, im } = complexAt(analysis.s11, nearest(frequencies, frequency));
+      const { re, im } = complexAt(analysis.s11, nearest(analysis.frequencies, frequency));
       return Math.hypot(re, im);
     },
   });
   progress?.(1);
   if (!band.feasible) return { ...band, model: "mode matching" };
   const middle = (count - 1) / 2;
+  // the analysis may have sampled finer where something moves fast
+  const at = frequencies.map((frequency) => nearest(analysis.frequencies, frequency));
   return {
     ...band,
     warnings: [
@@ -79,10 +83,11 @@ export function matchedOverBand(
       ...analysis.warnings.filter(({ text }) => !band.warnings.some((one) => one.text === text)),
     ],
     model: "mode matching",
-    pattern: patterns[middle]!,
-    modes: analysis.apertureModes[middle]!,
-    s11: frequencies.map((_, i) => complexAt(analysis.s11, i)),
-    modeRatio: analysis.apertureModes.map(ratioOf),
+    pattern: patterns[at[middle]!]!,
+    modes: analysis.apertureModes[at[middle]!]!,
+    s11: at.map((i) => complexAt(analysis.s11, i)),
+    modeRatio: at.map((i) => ratioOf(analysis.apertureModes[i]!)),
+    resonances: analysis.resonances,
     powerBalance: Math.max(...analysis.powerBalance.map(Math.abs)),
     convergence: analysis.convergence,
   };
