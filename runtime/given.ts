@@ -41,6 +41,8 @@ export interface QuantityOptions {
 
 export function declareQuantity(text: string, options: QuantityOptions): GivenDeclaration {
   const { label, why } = named("given", options, text);
+  if (typeof text !== "string")
+    throw new Refusal(`given: ${label} must be text, a number with its unit like "2.4 m"; got ${typeof text}`);
   try {
     const { value, unit, text: defaultText } = parseQuantity(text);
     const bound = (name: "min" | "max" | "step") => {
@@ -73,8 +75,10 @@ export interface ChoiceOptions<T extends string> {
 }
 
 export function declareChoice<T extends string>(options: readonly T[], details: ChoiceOptions<T>): GivenDeclaration {
-  const { label, why } = named("given.choice", details, String(options));
-  if (!Array.isArray(options) || options.length < 2 || new Set(options).size !== options.length) {
+  const { label, why } = named("given.choice", details, options);
+  if (!Array.isArray(options) || options.some((option) => typeof option !== "string"))
+    throw new Refusal(`given.choice: ${label} must offer a list of texts; got ${typeof options}`);
+  if (options.length < 2 || new Set(options).size !== options.length) {
     throw new Refusal(
       `given.choice: ${label} must offer at least two different options; got ${JSON.stringify(options)}`,
     );
@@ -102,8 +106,8 @@ export interface SwitchOptions {
 }
 
 export function declareSwitch(on: boolean, details: SwitchOptions): GivenDeclaration {
-  const { label, why } = named("given.switch", details, String(on));
-  if (typeof on !== "boolean") throw new Refusal(`given.switch: ${label} must be true or false; got ${String(on)}`);
+  const { label, why } = named("given.switch", details, on);
+  if (typeof on !== "boolean") throw new Refusal(`given.switch: ${label} must be true or false; got ${wordsFor(on)}`);
   return { declares: "given", form: "switch", label, why, unit: "", defaultText: on ? "on" : "off", default: on };
 }
 
@@ -125,15 +129,21 @@ export function declareText(text: string, details: TextOptions): GivenDeclaratio
   return declaration;
 }
 
+/** A value of any kind in a few words. */
+function wordsFor(value: unknown): string {
+  if (Array.isArray(value)) return value.slice(0, 8).map(wordsFor).join(",");
+  return ["string", "boolean", "number"].includes(typeof value) ? String(value).slice(0, 60) : typeof value;
+}
+
 function named(
   where: string,
   details: { label: string; why: string } | undefined,
-  text: string,
+  value: unknown,
 ): { label: string; why: string } {
   const { label, why } = details ?? { label: "", why: "" };
   if (typeof label !== "string" || label.trim() === "") {
     throw new Refusal(
-      `${where}: a given needs a label, the words that name it on the page; the one of ${text.slice(0, 60)} has none`,
+      `${where}: a given needs a label, the words that name it on the page; the one of ${wordsFor(value)} has none`,
     );
   }
   return { label: label.trim(), why: typeof why === "string" ? why : "" };
