@@ -1,6 +1,6 @@
 // A fork as a file: the notebook's new source, the files beside it that it imports, never over anything that is there.
 
-import { link, mkdir, open, readFile, realpath, rm, stat, writeFile } from "node:fs/promises";
+import { link, lstat, mkdir, open, readFile, realpath, rm, stat, writeFile } from "node:fs/promises";
 import { basename, dirname, isAbsolute, join, posix, relative, resolve, sep } from "node:path";
 import { RewriteRefused } from "../runtime/source/edit.ts";
 import { fileNameFor, forkSource } from "../runtime/source/fork-source.ts";
@@ -99,6 +99,10 @@ async function writeNew(path: string, text: string): Promise<void> {
 /** A file that the notebook imports; the same one may be there already. */
 async function writeBeside(path: string, { path: shownAs, text }: { path: string; text: string }): Promise<string[]> {
   if (posix.normalize(shownAs).startsWith("..")) return [];
+  let above = dirname(path);
+  while (!(await lstat(above).catch(() => undefined))) above = dirname(above);
+  if ((await realpath(above).catch(() => undefined)) !== above)
+    throw new Failure(`${shownAs}, which the study imports, would be written through a link; choose another folder.`);
   const there = await readFile(path, "utf8").catch(() => undefined);
   if (there === text) return [];
   if (there !== undefined || (await stat(path).catch(() => undefined)))

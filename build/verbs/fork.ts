@@ -24,6 +24,9 @@ Writes a study of your own from another: a new notebook with the new givens in i
 and every rationale marked as inherited, not yet confirmed. An exported file gives back its notebook exactly, with the givens it
 was exported with. Everything is dimensioned anew for the new givens. No file is ever overwritten.
 
+A notebook is a program, and a fork is evaluated here once, with your rights: fork only files of people whose programs you would run.
+An exported file that is only opened in a browser can't reach your files.
+
   --name NAME        the study's name: its title, and its file's name
 ${SET_HELP}
   --to FOLDER        a folder that is there; otherwise the notebook's own, for an exported file notebooks/
@@ -116,12 +119,28 @@ async function fromExport(
     }
   })();
   const [notebook, ...beside] = record.files;
-  if (beside.some(({ path }) => posix.isAbsolute(path) || posix.normalize(path).startsWith("..")))
-    throw new Failure(`${given} can't be forked: it carries a file that doesn't stand beside its notebook.`);
+  if (!isSafePath(record.notebook))
+    throw new Failure(`${given} can't be forked: it doesn't say where its notebook stood.`);
+  if (!beside.every(({ path }) => isSafePath(path)))
+    throw new Failure(`${given} can't be forked: it carries a file that no notebook beside it would import.`);
   // imports lead from where the notebook stood: its label begins at the project
   const folder = join(projectRoot, posix.dirname(record.notebook));
   const from = { label: basename(given), source: notebook!.text, folder, beside };
   return { from, inherited: record.givens };
+}
+
+/**
+ * A path that an export may carry: down from its notebook's folder, no hidden or special name on any system, and a kind of file
+ * that notebooks import. Whoever made the file wrote it.
+ */
+function isSafePath(path: string): boolean {
+  const parts = path.split("/");
+  return (
+    // biome-ignore lint/suspicious/noControlCharactersInRegex: exactly these must not be in a file's name
+    parts.every((part) => /^[^.\\:\u0000-\u001f][^\\:\u0000-\u001f]*$/.test(part) && part !== "node_modules") &&
+    /\.([cm]?[jt]s|[jt]sx|json|css|txt)$/i.test(path) &&
+    !/^(package|package-lock|tsconfig)\.json$/i.test(parts.at(-1)!)
+  );
 }
 
 async function targetFolder(named: string | undefined, usual: string, projectRoot: string): Promise<string> {
