@@ -9,6 +9,10 @@ export interface Side {
   id: number;
   /** basis functions in the guide's modes, [modeCount × count] */
   modes: RealMatrix;
+  /** where the kernel holds them */
+  address: number;
+  /** few of their elements are zero */
+  dense: boolean;
   /** what the guide's further modes add, for edge functions; with the aperture's radius, m */
   tail?: ModeTail & { radius: number };
 }

@@ -10,7 +10,7 @@ import { guardedGammaSquared, matchedAdmittance } from "./line.ts";
 import { createMemory } from "./memory.ts";
 import { isTE } from "./mode-table.ts";
 import { toWave } from "./outcome.ts";
-import { bandOf } from "./solve.ts";
+import { bandOf, prepareChain } from "./solve.ts";
 import { sweep } from "./sweep.ts";
 
 export interface StepOptions {
@@ -67,9 +67,8 @@ export function stepScattering(options: StepOptions): StepScattering {
     sections: [1, 1],
     highestWaveNumber: band.high,
   });
-  const bases = memory.bases(chain);
-  const table = memory.table(Math.max(...chain.guides.map((guide) => guide.modeCount)));
-  const prepared = { chain, bases, sections: memory.sections(chain, bases, band), band, table, kernel: memory.kernel };
+  const prepared = prepareChain(memory, chain, band);
+  const { bases, table } = prepared;
   const [answer] = sweep(prepared, [frequency], { incident });
   const { outgoing, lastField, powerError } = answer!;
 

@@ -42,7 +42,11 @@ export function solutionAt({ memory, pieces, level, band, steps: fixedSteps }: L
     { tapers, edges: hasEdges(pieces) },
     { steps, highestWaveNumber: band.high },
   );
-  const prepared = plan.map(({ fineness }) => prepare(memory, pieces, fineness, band));
+  const prepared: Prepared[] = [];
+  plan.forEach(({ fineness, fewer }, i) => {
+    // A solution with fewer functions is part of the one before it.
+    prepared.push(fewer ? prepared[i - 1]! : prepare(memory, pieces, fineness, band));
+  });
   const finest = prepared[0]!;
   return {
     level,
@@ -52,7 +56,10 @@ export function solutionAt({ memory, pieces, level, band, steps: fixedSteps }: L
     taperSteps: steps.reduce((sum, n, p) => sum + (isGuide(pieces[p]!) ? 0 : n), 0),
     at(frequencies, progress) {
       const solved = prepared.map((each, s) =>
-        solveBand(each, frequencies, (part) => progress?.((s + part) / prepared.length)),
+        solveBand(each, frequencies, {
+          fewer: plan[s]!.fewer,
+          progress: (part) => progress?.((s + part) / prepared.length),
+        }),
       );
       const refined = frequencies.map((frequency, f) => {
         const k = (2 * Math.PI * frequency) / speedOfLight;

@@ -9,9 +9,12 @@ import { edgeCouplings, edgeTail } from "./edge-basis.ts";
 import { type ModeTable, modeTable } from "./mode-table.ts";
 import { type SectionMatrices, sectionMatrices, type WaveBand } from "./section-matrices.ts";
 import { taperCouplings, taperGenerator } from "./taper-couplings.ts";
+import { type WorkSpace, workSpace } from "./work-space.ts";
 
 export interface Memory {
   kernel: Kernel;
+  /** the kernel's work space for horns up to these sizes */
+  work(largest: number, explicit: number, nodePairs: number): WorkSpace;
   /** at least so many modes */
   table(count: number): ModeTable;
   bases(chain: Chain): ApertureBasis[];
@@ -20,10 +23,15 @@ export interface Memory {
   endCall(): void;
 }
 
+/** The kernel's arena is emptied when it holds more: what has been forgotten stays in it until then. */
+const mostBytes = 64e6;
+
 /** A kept entry that so many calls had no use for is forgotten. */
 const keptCalls = 6;
 
 export function createMemory(): Memory {
+  const kernel = createKernel();
+  let work: WorkSpace | undefined;
   let table = modeTable(64);
   let call = 0;
   let nextId = 0;
@@ -31,9 +39,20 @@ export function createMemory(): Memory {
   const sides = createStore<Side>();
   const sections = createStore<SectionMatrices>();
   const stores = [matrices, sides, sections];
+  let addresses = new WeakMap<ArrayBufferLike, number>();
 
   return {
-    kernel: createKernel(),
+    kernel,
+    work(largest, explicit, pairs) {
+      if (!work || largest > work.largest || explicit > work.explicit || pairs > work.pairs) {
+        work = workSpace(kernel, {
+          largest: Math.max(largest, work?.largest ?? 0),
+          explicit: Math.max(explicit, work?.explicit ?? 0),
+          pairs: Math.max(pairs, work?.pairs ?? 0),
+        });
+      }
+      return work;
+    },
     table: tableOf,
     bases({ guides, apertures }) {
       return apertures.map((aperture, i) => {
@@ -52,12 +71,18 @@ export function createMemory(): Memory {
         // A guide matched at one end has no length in its admittance.
         const shape = left && right ? `${radius} ${length} ${modeCount}` : `${radius} ${modeCount}`;
         return sections.get(`${shape} ${left?.id} ${right?.id} ${inBand}`, () =>
-          sectionMatrices(guide, { left, right }, band, tableOf(modeCount)),
+          sectionMatrices(guide, { left, right }, band, { kernel, table: tableOf(modeCount) }),
         );
       });
     },
     endCall() {
-      for (const store of stores) store.forget(call - keptCalls);
+      const full = kernel.used() > mostBytes;
+      for (const store of stores) store.forget(full ? call + 1 : call - keptCalls);
+      if (full) {
+        kernel.reset();
+        work = undefined;
+        addresses = new WeakMap();
+      }
       call++;
     },
   };
@@ -71,17 +96,29 @@ export function createMemory(): Memory {
     const { modeCount } = guide;
     return sides.get(`${kind} ${count} ${radius} ${guide.radius} ${modeCount}`, () => {
       const id = nextId++;
+      const placed = (modes: RealMatrix, dense: boolean): Side => ({ id, modes, dense, address: place(modes.values) });
       const ratio = radius / guide.radius;
       if (kind === "edge") {
         const tail = { ...edgeTail(ratio, count, modeCount, tableOf(modeCount)), radius };
-        return { id, modes: edgeMatrix(ratio, count, modeCount), tail };
+        return { ...placed(edgeMatrix(ratio, count, modeCount), false), tail };
       }
       const counts = { smallCount: count, largeCount: modeCount };
       if (kind === "step" || ratio === 1) {
-        return { id, modes: couplings(ratio, counts, tableOf(Math.max(count, modeCount))) };
+        return placed(couplings(ratio, counts, tableOf(Math.max(count, modeCount))), ratio !== 1);
       }
-      return { id, modes: smoothMatrix(-Math.log(ratio), count, modeCount) };
+      return placed(smoothMatrix(-Math.log(ratio), count, modeCount), true);
     });
+  }
+
+  /** In the kernel; once for all that share a buffer, which are leading rows of one matrix. */
+  function place(values: Float64Array): number {
+    const held = addresses.get(values.buffer);
+    if (held !== undefined) return held;
+    const whole = new Float64Array(values.buffer);
+    const address = kernel.alloc(whole.length);
+    kernel.memory().set(whole, address / 8);
+    addresses.set(values.buffer, address);
+    return address;
   }
 
   /** The first rows of a matrix kept for its ratio: all teeth share the ratio 1. */

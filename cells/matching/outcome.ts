@@ -81,7 +81,7 @@ export function answerAt(from: Eliminated): Answer {
     lastField.re[p] = re;
     lastField.im[p] = im;
     for (let n = 0; n < last.modeCount; n++) {
-      const share = right.values[n * count + p]!;
+      const share = right.values[n * right.columns + p]!;
       outgoing.re[n]! += share * re;
       outgoing.im[n]! += share * im;
     }

@@ -5,6 +5,7 @@ import type { ApertureBasis } from "./aperture-basis.ts";
 import type { Chain } from "./chain.ts";
 import type { ModeTable } from "./mode-table.ts";
 import type { SectionMatrices, WaveBand } from "./section-matrices.ts";
+import type { WorkSpace } from "./work-space.ts";
 
 /** A horn ready for any frequency of its band. */
 export interface Prepared {
@@ -14,4 +15,5 @@ export interface Prepared {
   band: WaveBand;
   table: ModeTable;
   kernel: Kernel;
+  work: WorkSpace;
 }

@@ -42,6 +42,8 @@ export type Role = "finest" | "halfSteps" | "fewerModes" | "fewerModesHalfSteps"
 export interface PlannedSolution {
   role: Role;
   fineness: Fineness;
+  /** the same with two functions fewer at every edge, and fewer modes at shallow steps */
+  fewer?: boolean;
   /** in the extrapolated answer; all together 1 */
   weight: number;
 }
@@ -66,11 +68,10 @@ export function plannedSolutions(
   const halfSteps = steps.map((n) => Math.max(1, n / 2));
   const fewerModes = 2 * Math.round((taperModes * fewerModesShare) / 2);
   const edgeWeight = 1 / ((edgeFunctions / (edgeFunctions - 2)) ** edgePower - 1);
-  const fewerFunctions = { ...finest, edgeFunctions: edgeFunctions - 2, modeCount: fewerModes };
   if (!has.tapers) {
     return [
       { role: "finest", fineness: finest, weight: 1 + edgeWeight },
-      { role: "fewerFunctions", fineness: fewerFunctions, weight: -edgeWeight },
+      { role: "fewerFunctions", fineness: finest, fewer: true, weight: -edgeWeight },
     ];
   }
   const modeWeight = (fewerModes + 1) / (taperModes - fewerModes);
@@ -87,7 +88,8 @@ export function plannedSolutions(
   if (has.edges) {
     plan.push({
       role: "fewerFunctions",
-      fineness: { ...fewerFunctions, sections: halfSteps },
+      fineness: { ...finest, modeCount: fewerModes, sections: halfSteps },
+      fewer: true,
       weight: -edgeWeight,
     });
   }

@@ -1,6 +1,7 @@
 // The admittances of a guide between its two apertures, in their basis: the lowest modes stay explicit, the sum of all
 // others is smooth in frequency and is interpolated over the band.
 
+import type { Kernel } from "../math/kernel/kernel.ts";
 import type { Side } from "./aperture-basis.ts";
 import type { Guide } from "./chain.ts";
 import { guardedGammaSquared, writeLine } from "./line.ts";
@@ -51,21 +52,28 @@ export function nodeWeights({ nodes }: WaveBand, k: number): Float64Array {
   });
 }
 
+/** A guide of so few modes keeps all of them explicit. */
+const allExplicit = 24;
+
 /** Modes kept explicit. */
 export function explicitModes({ radius, modeCount }: Guide, { high }: WaveBand, table: ModeTable): number {
+  if (modeCount <= allExplicit) return modeCount;
   let count = 0;
   while (count < modeCount && table.chi[count]! < explicitBelow * high * radius) count++;
   return count;
 }
 
-/** k·jη0·Y of the modes beyond the explicit ones, at each node of the band: innermost index the node. */
+/** Nodes as the kernel holds them: in pairs, the last one perhaps idle. */
+export const nodePairs = ({ nodes }: WaveBand): number => Math.ceil(nodes.length / 2);
+
+/** k·jη0·Y of the modes beyond the explicit ones at each node of the band, in the kernel. Address 0: there is nothing. */
 export interface SectionMatrices {
   explicit: number;
-  /** [left count × left count × nodes], lower half; absent where the guide has no left aperture */
-  left?: Float64Array;
-  right?: Float64Array;
-  /** [left count × right count × nodes], sign reversed */
-  transfer?: Float64Array;
+  /** [left count × left count × 2·pairs], lower half; none where the guide has no left aperture */
+  left: number;
+  right: number;
+  /** [left count × right count × 2·pairs], sign reversed */
+  transfer: number;
 }
 
 /**
@@ -76,91 +84,69 @@ export function sectionMatrices(
   guide: Guide,
   { left, right }: { left?: Side; right?: Side },
   band: WaveBand,
-  table: ModeTable,
+  { kernel, table }: { kernel: Kernel; table: ModeTable },
 ): SectionMatrices {
   const explicit = explicitModes(guide, band, table);
-  const nodes = band.nodes.length;
-  const out: SectionMatrices = { explicit };
-  const size = (a: Side, b: Side): Float64Array => new Float64Array(a.modes.columns * b.modes.columns * nodes);
-  if (left) out.left = size(left, left);
-  if (right) out.right = left?.modes === right.modes ? out.left! : size(right, right);
-  if (left && right) out.transfer = size(left, right);
-  const line = {
-    self: new Float64Array(guide.modeCount),
-    transfer: new Float64Array(guide.modeCount),
-    selfAt: 0,
-    transferAt: 0,
+  const out: SectionMatrices = { explicit, left: 0, right: 0, transfer: 0 };
+  if (explicit >= guide.modeCount) return out;
+  const pairs = nodePairs(band);
+  const width = 2 * pairs;
+  const rows = guide.modeCount - explicit;
+  const square = (a: Side, b: Side): number => {
+    const size = a.modes.columns * b.modes.columns * width;
+    const address = kernel.alloc(size);
+    kernel.memory().fill(0, address / 8, address / 8 + size);
+    return address;
   };
+  if (left) out.left = square(left, left);
+  if (right) out.right = left?.modes === right.modes ? out.left : square(right, right);
+  if (left && right) out.transfer = square(left, right);
+
+  const line = { self: new Float64Array(1), transfer: new Float64Array(1), selfAt: 0, transferAt: 0 };
   const length = left && right ? guide.length : Number.POSITIVE_INFINITY;
-  band.nodes.forEach((k, node) => {
-    for (let n = explicit; n < guide.modeCount; n++) {
-      const gammaSquared = guardedGammaSquared(table.chi[n]! / guide.radius, k);
-      writeLine(isTE(n), gammaSquared, k, length, line, n);
-      line.self[n]! *= k;
-      line.transfer[n]! *= -k;
-    }
-    const at = { node, nodes, from: explicit };
-    if (left) addSelf(out.left!, left, line.self, k, at);
-    if (right && out.right !== out.left) addSelf(out.right!, right, line.self, k, at);
-    if (left && right) addTransfer(out.transfer!, left, right, line.transfer, at);
-  });
+  const self = kernel.alloc(rows * width);
+  const transfer = kernel.alloc(rows * width);
+  const memory = kernel.memory();
+  memory.fill(0, self / 8, self / 8 + rows * width);
+  memory.fill(0, transfer / 8, transfer / 8 + rows * width);
+  // Beyond this many modes nothing reaches the guide's other end.
+  let reaching = 0;
+  for (let n = 0; n < rows; n++) {
+    const cutoffNumber = table.chi[explicit + n]! / guide.radius;
+    band.nodes.forEach((k, node) => {
+      writeLine(isTE(explicit + n), guardedGammaSquared(cutoffNumber, k), k, length, line, 0);
+      memory[self / 8 + n * width + node] = line.self[0]! * k;
+      memory[transfer / 8 + n * width + node] = -line.transfer[0]! * k;
+      if (line.transfer[0] !== 0) reaching = n + 1;
+    });
+  }
+  const rowsOf = ({ address, modes }: Side): number => address + 8 * explicit * modes.columns;
+  const addSelf = (to: number, side: Side): void => {
+    const { columns } = side.modes;
+    const from = rowsOf(side);
+    kernel.gram(to, columns, from, columns, columns, from, columns, columns, rows, self, pairs, 1);
+    addTail(memory, to / 8, side, band, width);
+  };
+  if (left) addSelf(out.left, left);
+  if (right && out.right !== out.left) addSelf(out.right, right);
+  if (left && right) {
+    const [P, Q] = [left.modes.columns, right.modes.columns];
+    kernel.gram(out.transfer, Q, rowsOf(left), P, P, rowsOf(right), Q, Q, reaching, transfer, pairs, 0);
+  }
   return out;
 }
 
-interface AtNode {
-  node: number;
-  nodes: number;
-  /** first mode of the sum */
-  from: number;
-}
-
-function addSelf(
-  out: Float64Array,
-  { modes, tail }: Side,
-  weights: Float64Array,
-  k: number,
-  { node, nodes, from }: AtNode,
-): void {
-  const { rows, columns, values } = modes;
-  for (let n = from; n < rows; n++) {
-    const row = n * columns;
-    const weight = weights[n]!;
-    for (let p = 0; p < columns; p++) {
-      const factor = values[row + p]! * weight;
-      if (factor === 0) continue;
-      let to = p * columns * nodes + node;
-      for (let q = 0; q <= p; q++, to += nodes) out[to]! += factor * values[row + q]!;
-    }
-  }
+function addTail(memory: Float64Array, to: number, { modes, tail }: Side, { nodes }: WaveBand, width: number): void {
   if (!tail) return;
-  const forTE = 1 / tail.radius;
-  const forTM = -k * k * tail.radius;
-  for (let p = 0; p < columns; p++) {
-    for (let q = 0; q <= p; q++) {
-      out[(p * columns + q) * nodes + node]! += forTE * tail.te[p]! * tail.te[q]! + forTM * tail.tm[p]! * tail.tm[q]!;
+  const { columns } = modes;
+  nodes.forEach((k, node) => {
+    const forTE = 1 / tail.radius;
+    const forTM = -k * k * tail.radius;
+    for (let p = 0; p < columns; p++) {
+      for (let q = 0; q <= p; q++) {
+        memory[to + (p * columns + q) * width + node]! +=
+          forTE * tail.te[p]! * tail.te[q]! + forTM * tail.tm[p]! * tail.tm[q]!;
+      }
     }
-  }
-}
-
-function addTransfer(
-  out: Float64Array,
-  left: Side,
-  right: Side,
-  weights: Float64Array,
-  { node, nodes, from }: AtNode,
-): void {
-  const P = left.modes.columns;
-  const Q = right.modes.columns;
-  const rows = Math.min(left.modes.rows, right.modes.rows);
-  for (let n = from; n < rows; n++) {
-    const weight = weights[n]!;
-    // Evanescent modes that don't reach the other end.
-    if (weight === 0) continue;
-    for (let p = 0; p < P; p++) {
-      const factor = left.modes.values[n * P + p]! * weight;
-      if (factor === 0) continue;
-      let to = p * Q * nodes + node;
-      for (let q = 0; q < Q; q++, to += nodes) out[to]! += factor * right.modes.values[n * Q + q]!;
-    }
-  }
+  });
 }

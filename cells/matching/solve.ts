@@ -2,13 +2,13 @@
 
 import { speedOfLight } from "../constants.ts";
 import type { ComplexVector } from "../math/complex.ts";
-import { chainOf, type Fineness } from "./chain.ts";
+import { type Chain, chainOf, type Fineness } from "./chain.ts";
 import type { Memory } from "./memory.ts";
 import type { Answer } from "./outcome.ts";
 import type { Piece } from "./pieces.ts";
 import type { Prepared } from "./prepared.ts";
-import { type WaveBand, waveBand } from "./section-matrices.ts";
-import { sweep } from "./sweep.ts";
+import { nodePairs, type WaveBand, waveBand } from "./section-matrices.ts";
+import { portCount, sweep } from "./sweep.ts";
 
 /** Frequencies solved between two reports of progress. */
 const portion = 8;
@@ -22,11 +22,22 @@ const otherPortTerms = [-1.37, 0.19, 2.9, -0.41];
 
 /** Everything of a horn that doesn't depend on the single frequency. */
 export function prepare(memory: Memory, pieces: Piece[], fineness: Fineness, band: WaveBand): Prepared {
-  const chain = chainOf(pieces, fineness);
+  return prepareChain(memory, chainOf(pieces, fineness), band);
+}
+
+export function prepareChain(memory: Memory, chain: Chain, band: WaveBand): Prepared {
+  const most = (values: number[]): number => values.reduce((a, b) => Math.max(a, b), 0);
+  const table = memory.table(most(chain.guides.map(({ modeCount }) => modeCount)));
   const bases = memory.bases(chain);
   const sections = memory.sections(chain, bases, band);
-  const most = chain.guides.reduce((count, { modeCount }) => Math.max(count, modeCount), 0);
-  return { chain, bases, sections, band, table: memory.table(most), kernel: memory.kernel };
+  const [first, last] = [chain.guides[0]!, chain.guides.at(-1)!];
+  const ports = Math.max(1, portCount(first, band, table)) + portCount(last, band, table);
+  const work = memory.work(
+    most(bases.map(({ count }) => count)) + ports,
+    most(sections.map(({ explicit }) => explicit)),
+    nodePairs(band),
+  );
+  return { chain, bases, sections, band, table, kernel: memory.kernel, work };
 }
 
 export function bandOf(frequencies: number[]): WaveBand {
@@ -37,12 +48,16 @@ export function bandOf(frequencies: number[]): WaveBand {
  * Answers at the frequencies, in order. The real form loses digits near a resonance of the horn closed by its port terms;
  * the pivots show it, and another term there has none.
  */
-export function solveBand(prepared: Prepared, frequencies: number[], progress?: (share: number) => void): Answer[] {
+export function solveBand(
+  prepared: Prepared,
+  frequencies: number[],
+  { fewer = false, progress }: { fewer?: boolean; progress?: (share: number) => void } = {},
+): Answer[] {
   const answers: Answer[] = [];
   for (let i = 0; i < frequencies.length; i += portion) {
     const some = frequencies.slice(i, i + portion);
-    sweep(prepared, some).forEach((answer, lane) => {
-      answers.push(isSound(answer) ? answer : soundest(prepared, some[lane]!, answer));
+    sweep(prepared, some, { fewer }).forEach((answer, lane) => {
+      answers.push(isSound(answer) ? answer : soundest(prepared, some[lane]!, { fewer, first: answer }));
     });
     progress?.(Math.min(1, (i + portion) / frequencies.length));
   }
@@ -54,10 +69,10 @@ const isSound = ({ powerError, cancellation, outgoing }: Answer): boolean =>
 
 const isFiniteVector = ({ re, im }: ComplexVector): boolean => re.every(Number.isFinite) && im.every(Number.isFinite);
 
-function soundest(prepared: Prepared, frequency: number, first: Answer): Answer {
+function soundest(prepared: Prepared, frequency: number, { fewer, first }: { fewer: boolean; first: Answer }): Answer {
   let best = first;
   for (const term of otherPortTerms) {
-    const [again] = sweep(prepared, [frequency], { portTerm: term });
+    const [again] = sweep(prepared, [frequency], { portTerm: term, fewer });
     if (isSound(again!)) return again!;
     if (!(best.cancellation <= again!.cancellation)) best = again!;
   }

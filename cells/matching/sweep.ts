@@ -5,19 +5,21 @@
 // modes of throat and mouth stay outside as ports, so that everything inside is real (lossless, times jη0).
 
 import { speedOfLight } from "../constants.ts";
-import type { Guide } from "./chain.ts";
+import type { Side } from "./aperture-basis.ts";
+import type { Aperture, Guide } from "./chain.ts";
 import type { RealMatrix } from "./couplings.ts";
 import { guardedGammaSquared, matchedAdmittance, writeLine } from "./line.ts";
-import { loadedHorn } from "./loaded-horn.ts";
 import { isTE, type ModeTable } from "./mode-table.ts";
 import { type Answer, answerAt } from "./outcome.ts";
 import type { Prepared } from "./prepared.ts";
 import { shortedResonances } from "./resonance-count.ts";
-import { nodeWeights } from "./section-matrices.ts";
+import { nodePairs, nodeWeights, type WaveBand } from "./section-matrices.ts";
 
 export interface SweepOptions {
   /** a real admittance that the ports hold inside the elimination and not outside: moves its resonances */
   portTerm?: number;
+  /** two functions fewer at every edge, fewer modes at shallow steps; default no */
+  fewer?: boolean;
   /** index of the mode that comes in, one that travels in the throat; default 0, TE11 */
   incident?: number;
 }
@@ -38,11 +40,17 @@ export function sweep(prepared: Prepared, frequencies: number[], options: SweepO
   return answers.slice(0, frequencies.length);
 }
 
-/** Modes that travel at the highest wave number. */
-function portCount({ radius, modeCount }: Guide, highest: number, table: ModeTable): number {
+/** Modes of an end guide that travel at the highest wave number of the band. */
+export function portCount({ radius, modeCount }: Guide, { high }: WaveBand, table: ModeTable): number {
   let count = 0;
-  while (count < modeCount && table.chi[count]! < highest * radius) count++;
+  while (count < modeCount && table.chi[count]! < high * radius) count++;
   return count;
+}
+
+/** Functions of an aperture that are used: all, or fewer to see what the last ones matter. */
+function usedCount({ kind, count }: Aperture, fewer: boolean): number {
+  if (!fewer || kind === "smooth") return count;
+  return kind === "edge" ? count - 2 : Math.max(1, 2 * Math.round(0.35 * count));
 }
 
 const lanes = 2;
@@ -50,68 +58,67 @@ const lanes = 2;
 function sweepPair(
   prepared: Prepared,
   frequencies: number[],
-  { portTerm = defaultPortTerm, incident = 0 }: SweepOptions,
+  { portTerm = defaultPortTerm, incident = 0, fewer = false }: SweepOptions,
 ): Answer[] {
-  const { chain, bases, sections, band, table, kernel } = prepared;
+  const { chain, bases, sections, band, table, kernel, work } = prepared;
   const { guides } = chain;
+  const counts = chain.apertures.map((aperture) => usedCount(aperture, fewer));
   const first = guides[0]!;
   const last = guides.at(-1)!;
-  const inPorts = Math.max(1, portCount(first, band.high, table));
-  const outPorts = portCount(last, band.high, table);
-  const horn = loadedHorn(prepared, inPorts + outPorts);
+  const inPorts = Math.max(1, portCount(first, band, table));
+  const outPorts = portCount(last, band, table);
   const memory = kernel.memory();
-  const nodes = band.nodes.length;
+  const nodes = 2 * nodePairs(band);
   const waveNumbers = frequencies.map((f) => (2 * Math.PI * f) / speedOfLight);
+  memory.fill(0, work.weights / 8, work.weights / 8 + lanes * nodes);
   waveNumbers.forEach((k, lane) => {
     nodeWeights(band, k).forEach((weight, m) => {
-      memory[horn.weights / 8 + lanes * m + lane] = weight;
+      memory[work.weights / 8 + lanes * m + lane] = weight;
     });
   });
   const cancellation = new Float64Array(lanes);
   const negativePivots = new Int32Array(lanes);
-  const { columns: x, scratch } = horn;
+  const { columns: x, scratch } = work;
 
   // The block at hand: the square `s` of its aperture's functions, its rows `stride` apart. Eliminating it leaves in `t` the
   // next aperture's block and the throat's ports, which every block still sees.
-  let [s, t] = horn.squares;
-  let count = bases[0]!.count;
+  let [s, t] = work.squares;
+  let count = counts[0]!;
   let stride = count;
   writeEnd(first, sections[0]!.explicit, inPorts);
-  kernel.combine(s, stride, horn.sections[0]!.right, count, count, nodes, horn.weights, 1, 0);
-  const begin = horn.apertures[0]!.left;
-  kernel.gram(s, stride, begin, count, begin, count, sections[0]!.explicit, horn.self, 1);
+  memory.fill(0, s / 8, s / 8 + lanes * count * count);
+  addSquare(s, stride, bases[0]!.left, sections[0]!.right, sections[0]!.explicit, count);
 
   for (let a = 0; a < bases.length; a++) {
-    const { right } = bases[a]!;
+    const near = bases[a]!.right;
     const guide = guides[a + 1]!;
-    const { explicit } = sections[a + 1]!;
-    const here = horn.sections[a + 1]!;
-    const near = horn.apertures[a]!.right;
-    const next = bases[a + 1];
-    const nextCount = next ? next.count : outPorts;
+    const section = sections[a + 1]!;
+    const far = bases[a + 1]?.left;
+    const nextCount = far ? counts[a + 1]! : outPorts;
     const size = nextCount + inPorts;
-    const firstPort = t / 8 + lanes * nextCount * size;
-    if (next) {
-      const far = horn.apertures[a + 1]!.left;
-      writeLines(guide, explicit);
-      kernel.combine(x, size, here.transfer, count, nextCount, nodes, horn.weights, 0, 0);
-      kernel.gram(x, size, near, count, far, nextCount, explicit, horn.transfer, 0);
-      kernel.combine(t, size, here.right, nextCount, nextCount, nodes, horn.weights, 1, 0);
-      kernel.gram(t, size, far, nextCount, far, nextCount, explicit, horn.self, 1);
-      memory.fill(0, firstPort, firstPort + lanes * inPorts * size);
+    memory.fill(0, t / 8, t / 8 + lanes * size * size);
+    if (far) {
+      writeLines(guide, section.explicit);
+      memory.fill(0, x / 8, x / 8 + lanes * count * size);
+      if (section.transfer) {
+        const { columns } = far.modes;
+        kernel.combine(x, size, section.transfer, columns, count, nextCount, nodes, work.weights, 0, 0);
+      }
+      const [p, q] = [near.modes.columns, far.modes.columns];
+      const { explicit } = section;
+      kernel.gram(x, size, near.address, p, count, far.address, q, nextCount, explicit, work.transfer, 1, 0);
+      addSquare(t, size, far, section.right, explicit, nextCount);
     } else {
-      writeEnd(guide, explicit, outPorts);
-      writePortColumns(size, 0, right.modes, outPorts);
-      memory.fill(0, t / 8, t / 8 + lanes * size * size);
+      writeEnd(guide, section.explicit, outPorts);
+      writePortColumns(size, 0, near.modes, outPorts);
     }
-    kernel.combine(s, stride, here.left, count, count, nodes, horn.weights, 1, 1);
-    kernel.gram(s, stride, near, count, near, count, explicit, horn.self, 1);
+    addSquare(s, stride, near, section.left, section.explicit, count);
     if (a === 0) writePortColumns(size, nextCount, bases[0]!.left.modes, inPorts);
     else carryPorts(nextCount, size);
     const diagonal = diagonalOf();
     kernel.eliminate(s, stride, x, t, scratch, count, size);
     notePivots(diagonal);
-    if (!next) {
+    if (!far) {
       kernel.solveUpper(s, stride, x, count, size);
       const columns = memory.slice(x / 8, x / 8 + lanes * count * size);
       const ports = memory.slice(t / 8, t / 8 + lanes * size * size);
@@ -129,7 +136,7 @@ function sweepPair(
           outPorts,
           portTerm,
           incident,
-          right: right.modes,
+          right: near.modes,
           table,
           cancellation: cancellation[lane]!,
           shorted: negativePivots[lane]! + shortedResonances(chain, k, table),
@@ -141,6 +148,15 @@ function sweepPair(
     count = nextCount;
   }
   throw new Error("sweep: a chain must have an aperture");
+
+  /** Adds a guide's own admittance at one of its apertures: high modes interpolated, explicit ones from `work.self`. */
+  function addSquare(to: number, stride: number, side: Side, high: number, explicit: number, count: number): void {
+    const { address, dense } = side;
+    const { columns } = side.modes;
+    if (high) kernel.combine(to, stride, high, columns, count, count, nodes, work.weights, 1, 1);
+    if (dense) kernel.denseGram(to, stride, address, columns, count, explicit, work.self, scratch);
+    else kernel.gram(to, stride, address, columns, count, address, columns, count, explicit, work.self, 1, 1);
+  }
 
   function diagonalOf(): Float64Array {
     const out = new Float64Array(count * lanes);
@@ -169,14 +185,14 @@ function sweepPair(
     for (let n = 0; n < explicit; n++) {
       waveNumbers.forEach((k, lane) => {
         const gammaSquared = guardedGammaSquared(table.chi[n]! / guide.radius, k);
-        memory[horn.self / 8 + lanes * n + lane] =
+        memory[work.self / 8 + lanes * n + lane] =
           n < ports ? portTerm : matchedAdmittance(isTE(n), gammaSquared, k).re;
       });
     }
   }
 
   function writeLines({ radius, length }: Guide, explicit: number): void {
-    const out = { self: memory, transfer: memory, selfAt: horn.self / 8, transferAt: horn.transfer / 8 };
+    const out = { self: memory, transfer: memory, selfAt: work.self / 8, transferAt: work.transfer / 8 };
     for (let n = 0; n < explicit; n++) {
       const cutoffNumber = table.chi[n]! / radius;
       for (let l = 0; l < lanes; l++) {
@@ -189,7 +205,7 @@ function sweepPair(
 
   /** x[p, at + q] = −(function p in port mode q) */
   function writePortColumns(size: number, at: number, modes: RealMatrix, ports: number): void {
-    for (let p = 0; p < modes.columns; p++) {
+    for (let p = 0; p < count; p++) {
       for (let q = 0; q < ports; q++) {
         const to = x / 8 + lanes * (p * size + at + q);
         memory[to] = memory[to + 1] = -modes.values[q * modes.columns + p]!;

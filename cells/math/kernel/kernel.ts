@@ -8,6 +8,8 @@ export interface Kernel extends KernelFunctions {
   kind: "WebAssembly" | "TypeScript";
   /** address of so many doubles, not cleared, aligned to 16 bytes */
   alloc(doubles: number): number;
+  /** bytes allocated */
+  used(): number;
   /** gives back everything allocated */
   reset(): void;
   /** the arena as doubles; asked for anew after `alloc` */
@@ -25,7 +27,7 @@ export function createKernel(): Kernel {
 }
 
 const pageBytes = 65_536;
-/** What AssemblyScript may put at the start of memory. */
+/** The kernel's own scratch at the start of memory. */
 const reservedBytes = 1_024;
 
 let compiled: WebAssembly.Module | undefined;
@@ -50,6 +52,7 @@ export function webAssemblyKernel(): Kernel {
       }
       return address;
     },
+    used: () => used,
     reset() {
       used = reservedBytes;
     },
@@ -73,6 +76,7 @@ export function typeScriptKernel(): Kernel {
       }
       return address;
     },
+    used: () => used,
     reset() {
       used = reservedBytes;
     },

@@ -7,13 +7,13 @@ import type { KernelFunctions } from "./functions.ts";
 /** @param memory the arena, asked for anew at every call: it may have grown */
 export function twinFunctions(memory: () => Float64Array): KernelFunctions {
   return {
-    combine(out, stride, matrix, rows, columns, nodes, weights, lower, add) {
+    combine(out, stride, matrix, matrixColumns, rows, columns, nodes, weights, lower, add) {
       const m = memory();
       for (let p = 0; p < rows; p++) {
         const end = lower ? p + 1 : columns;
         for (let q = 0; q < end; q++) {
           const to = out / 8 + 2 * (p * stride + q);
-          const from = matrix / 8 + (p * columns + q) * nodes;
+          const from = matrix / 8 + (p * matrixColumns + q) * nodes;
           for (let lane = 0; lane < 2; lane++) {
             let sum = 0;
             for (let n = 0; n < nodes; n++) sum += m[from + n]! * m[weights / 8 + 2 * n + lane]!;
@@ -23,18 +23,32 @@ export function twinFunctions(memory: () => Float64Array): KernelFunctions {
       }
     },
 
-    gram(out, stride, a, aColumns, b, bColumns, rows, w, lower) {
+    gram(out, stride, a, aStride, aColumns, b, bStride, bColumns, rows, w, pairs, lower) {
       const m = memory();
+      const width = 2 * pairs;
       for (let n = 0; n < rows; n++) {
         for (let p = 0; p < aColumns; p++) {
-          const value = m[a / 8 + n * aColumns + p]!;
+          const value = m[a / 8 + n * aStride + p]!;
           if (value === 0) continue;
           const end = lower ? p + 1 : bColumns;
           for (let q = 0; q < end; q++) {
-            const factor = value * m[b / 8 + n * bColumns + q]!;
+            const factor = value * m[b / 8 + n * bStride + q]!;
+            if (factor === 0) continue;
+            const to = out / 8 + width * (p * stride + q);
+            for (let i = 0; i < width; i++) m[to + i]! += factor * m[w / 8 + width * n + i]!;
+          }
+        }
+      }
+    },
+
+    denseGram(out, stride, a, aStride, columns, rows, w) {
+      const m = memory();
+      for (let n = 0; n < rows; n++) {
+        for (let p = 0; p < columns; p++) {
+          for (let q = 0; q <= p; q++) {
+            const factor = m[a / 8 + n * aStride + p]! * m[a / 8 + n * aStride + q]!;
             const to = out / 8 + 2 * (p * stride + q);
-            m[to]! += factor * m[w / 8 + 2 * n]!;
-            m[to + 1]! += factor * m[w / 8 + 2 * n + 1]!;
+            for (let lane = 0; lane < 2; lane++) m[to + lane]! += factor * m[w / 8 + 2 * n + lane]!;
           }
         }
       }

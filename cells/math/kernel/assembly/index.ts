@@ -10,11 +10,15 @@ function at(base: usize, index: i32): usize {
   return base + ((<usize>index) << 4);
 }
 
-/** out[p, q] = Σ_m matrix[p, q, m]·weight[m], or += where `add`; of the lower half (q ≤ p) where `lower`. */
+/**
+ * out[p, q] = Σ_m matrix[p, q, m]·weight[m], or += where `add`; of the lower half (q ≤ p) where `lower`. The matrix's rows are
+ * `matrixColumns` long, of which `columns` are taken.
+ */
 export function combine(
   out: usize,
   stride: i32,
   matrix: usize,
+  matrixColumns: i32,
   rows: i32,
   columns: i32,
   nodes: i32,
@@ -24,7 +28,7 @@ export function combine(
 ): void {
   for (let p = 0; p < rows; p++) {
     const end = lower ? p + 1 : columns;
-    let from = matrix + ((<usize>(p * columns * nodes)) << 3);
+    let from = matrix + ((<usize>(p * matrixColumns * nodes)) << 3);
     let to = at(out, p * stride);
     for (let q = 0; q < end; q++) {
       let sum = f64x2.mul(v128.load64_splat(from), v128.load(weights));
@@ -39,36 +43,132 @@ export function combine(
   }
 }
 
-/** out[p, q] += Σ_n a[n, p]·b[n, q]·w[n]; of the lower half where `lower`. Zeros in a are passed over. */
+/** Places of the nonzero elements of a row, from address 0 on: up to 256. */
+function nonzeros(row: usize, columns: i32): i32 {
+  let count = 0;
+  for (let q = 0; q < columns; q++) {
+    if (load<f64>(row + ((<usize>q) << 3)) === 0) continue;
+    store<i32>((<usize>count) << 2, q);
+    count++;
+  }
+  return count;
+}
+
+/**
+ * out[p, q] += Σ_n a[n, p]·b[n, q]·w[n]; of the lower half where `lower`. Zeros are passed over. Every element of out and w is
+ * `pairs` pairs. Rows of a and b are aStride and bStride long.
+ */
 export function gram(
   out: usize,
   stride: i32,
   a: usize,
+  aStride: i32,
   aColumns: i32,
   b: usize,
+  bStride: i32,
   bColumns: i32,
   rows: i32,
   w: usize,
+  pairs: i32,
   lower: i32,
 ): void {
   for (let n = 0; n < rows; n++) {
-    const weight = v128.load(at(w, n));
-    const aRow = a + ((<usize>(n * aColumns)) << 3);
-    const bRow = b + ((<usize>(n * bColumns)) << 3);
+    const aRow = a + ((<usize>(n * aStride)) << 3);
+    const bRow = b + ((<usize>(n * bStride)) << 3);
+    const listed = nonzeros(bRow, bColumns);
     for (let p = 0; p < aColumns; p++) {
       const value = load<f64>(aRow + ((<usize>p) << 3));
       if (value === 0) continue;
-      const factor = f64x2.mul(f64x2.splat(value), weight);
-      const end = lower ? p + 1 : bColumns;
-      let to = at(out, p * stride);
-      let from = bRow;
-      for (let q = 0; q < end; q++) {
-        v128.store(to, f64x2.add(v128.load(to), f64x2.mul(factor, v128.load64_splat(from))));
-        to += 16;
-        from += 8;
+      for (let pair = 0; pair < pairs; pair++) {
+        const factor = f64x2.mul(f64x2.splat(value), v128.load(at(w, n * pairs + pair)));
+        const row = at(out, p * stride * pairs + pair);
+        for (let i = 0; i < listed; i++) {
+          const q = load<i32>((<usize>i) << 2);
+          if (lower && q > p) break;
+          const to = row + ((<usize>(q * pairs)) << 4);
+          v128.store(to, f64x2.add(v128.load(to), f64x2.mul(factor, v128.load64_splat(bRow + ((<usize>q) << 3)))));
+        }
       }
     }
   }
+}
+
+/** The lower half of `gram` with b = a, without passing over zeros: blocks of four by two. scratch [rows × columns]. */
+export function denseGram(
+  out: usize,
+  stride: i32,
+  a: usize,
+  aStride: i32,
+  columns: i32,
+  rows: i32,
+  w: usize,
+  scratch: usize,
+): void {
+  for (let n = 0; n < rows; n++) {
+    const weight = v128.load(at(w, n));
+    let from = a + ((<usize>(n * aStride)) << 3);
+    let to = at(scratch, n * columns);
+    for (let p = 0; p < columns; p++) {
+      v128.store(to, f64x2.mul(weight, v128.load64_splat(from)));
+      from += 8;
+      to += 16;
+    }
+  }
+  const zStep = (<usize>columns) << 4;
+  const aStep = (<usize>aStride) << 3;
+  let p = 0;
+  for (; p + 3 < columns; p += 4) {
+    for (let q = 0; q < p + 4; q += 2) {
+      let z = at(scratch, p);
+      let y = a + ((<usize>q) << 3);
+      let a0 = f64x2.splat(0);
+      let a1 = f64x2.splat(0);
+      let b0 = f64x2.splat(0);
+      let b1 = f64x2.splat(0);
+      let c0 = f64x2.splat(0);
+      let c1 = f64x2.splat(0);
+      let d0 = f64x2.splat(0);
+      let d1 = f64x2.splat(0);
+      for (let n = 0; n < rows; n++) {
+        const y0 = v128.load64_splat(y);
+        const y1 = v128.load64_splat(y, 8);
+        const za = v128.load(z);
+        const zb = v128.load(z, 16);
+        const zc = v128.load(z, 32);
+        const zd = v128.load(z, 48);
+        a0 = f64x2.add(a0, f64x2.mul(za, y0));
+        a1 = f64x2.add(a1, f64x2.mul(za, y1));
+        b0 = f64x2.add(b0, f64x2.mul(zb, y0));
+        b1 = f64x2.add(b1, f64x2.mul(zb, y1));
+        c0 = f64x2.add(c0, f64x2.mul(zc, y0));
+        c1 = f64x2.add(c1, f64x2.mul(zc, y1));
+        d0 = f64x2.add(d0, f64x2.mul(zd, y0));
+        d1 = f64x2.add(d1, f64x2.mul(zd, y1));
+        z += zStep;
+        y += aStep;
+      }
+      give(out, p * stride + q, a0, a1);
+      give(out, (p + 1) * stride + q, b0, b1);
+      give(out, (p + 2) * stride + q, c0, c1);
+      give(out, (p + 3) * stride + q, d0, d1);
+    }
+  }
+  for (; p < columns; p++) {
+    for (let q = 0; q <= p; q++) {
+      let sum = v128.load(at(out, p * stride + q));
+      for (let n = 0; n < rows; n++) {
+        const y = v128.load64_splat(a + ((<usize>(n * aStride + q)) << 3));
+        sum = f64x2.add(sum, f64x2.mul(v128.load(at(scratch, n * columns + p)), y));
+      }
+      v128.store(at(out, p * stride + q), sum);
+    }
+  }
+}
+
+function give(out: usize, index: i32, first: v128, second: v128): void {
+  const to = at(out, index);
+  v128.store(to, f64x2.add(v128.load(to), first));
+  v128.store(to, f64x2.add(v128.load(to, 16), second), 16);
 }
 
 /**
@@ -91,10 +191,40 @@ export function eliminate(s: usize, sStride: i32, x: usize, t: usize, scratch: u
   update(x, scratch, t, P, Q);
 }
 
+/** Rows in turn, four elements of a row at a time: four sums that don't wait for each other. */
 function factor(s: usize, stride: i32, P: i32): void {
   for (let i = 0; i < P; i++) {
     const row = at(s, i * stride);
-    for (let j = 0; j < i; j++) {
+    let j = 0;
+    for (; j + 3 < i; j += 4) {
+      const r0 = at(s, j * stride);
+      const r1 = at(s, (j + 1) * stride);
+      const r2 = at(s, (j + 2) * stride);
+      const r3 = at(s, (j + 3) * stride);
+      const to = at(row, j);
+      let e0 = v128.load(to);
+      let e1 = v128.load(to, 16);
+      let e2 = v128.load(to, 32);
+      let e3 = v128.load(to, 48);
+      for (let k = 0; k < j; k++) {
+        const raw = v128.load(at(row, k));
+        e0 = f64x2.sub(e0, f64x2.mul(raw, v128.load(at(r0, k))));
+        e1 = f64x2.sub(e1, f64x2.mul(raw, v128.load(at(r1, k))));
+        e2 = f64x2.sub(e2, f64x2.mul(raw, v128.load(at(r2, k))));
+        e3 = f64x2.sub(e3, f64x2.mul(raw, v128.load(at(r3, k))));
+      }
+      e1 = f64x2.sub(e1, f64x2.mul(e0, v128.load(at(r1, j))));
+      e2 = f64x2.sub(e2, f64x2.mul(e0, v128.load(at(r2, j))));
+      e3 = f64x2.sub(e3, f64x2.mul(e0, v128.load(at(r3, j))));
+      e2 = f64x2.sub(e2, f64x2.mul(e1, v128.load(at(r2, j + 1))));
+      e3 = f64x2.sub(e3, f64x2.mul(e1, v128.load(at(r3, j + 1))));
+      e3 = f64x2.sub(e3, f64x2.mul(e2, v128.load(at(r3, j + 2))));
+      v128.store(to, e0);
+      v128.store(to, e1, 16);
+      v128.store(to, e2, 32);
+      v128.store(to, e3, 48);
+    }
+    for (; j < i; j++) {
       const other = at(s, j * stride);
       let sum = v128.load(at(row, j));
       for (let k = 0; k < j; k++) sum = f64x2.sub(sum, f64x2.mul(v128.load(at(row, k)), v128.load(at(other, k))));

@@ -45,24 +45,53 @@ test("createKernel: WebAssembly where it can be had", () => {
   expect(createKernel().kind).toBe("WebAssembly");
 });
 
-test("kernel: combine and gram, WebAssembly against TypeScript", () => {
+test("kernel: combine and the grams, WebAssembly against TypeScript", () => {
   for (const [rows, columns, nodes, lower, add] of [
-    [5, 7, 1, 0, 0],
+    [5, 7, 2, 0, 0],
     [6, 6, 4, 1, 1],
-    [1, 3, 3, 0, 1],
+    [1, 3, 4, 0, 1],
+    [11, 11, 4, 1, 0],
   ] as const) {
-    const { both, place } = twins(4000, 7);
+    const { both, place } = twins(9000, 7);
     const stride = columns + 3;
     const out = place(randoms(2 * rows * stride, 1));
-    const matrix = place(randoms(rows * columns * nodes, 2));
+    const matrix = place(randoms(rows * (columns + 2) * nodes, 2));
     const weights = place(randoms(2 * nodes, 3));
-    for (const kernel of both) kernel.combine(out, stride, matrix, rows, columns, nodes, weights, lower, add);
+    for (const kernel of both) {
+      kernel.combine(out, stride, matrix, columns + 2, rows, columns, nodes, weights, lower, add);
+    }
     expectAlike(both, out, 2 * rows * stride, `combine ${rows}×${columns}, ${nodes} nodes`);
-    const a = place(randoms(9 * rows, 4).map((value, i) => (i % 3 === 0 ? 0 : value)));
-    const b = place(randoms(9 * columns, 5));
-    const w = place(randoms(18, 6));
-    for (const kernel of both) kernel.gram(out, stride, a, rows, b, columns, 9, w, lower);
+
+    const sparse = randoms(9 * (rows + 1), 4).map((value, i) => (i % 3 === 0 ? 0 : value));
+    const a = place(sparse);
+    const b = place(randoms(9 * (columns + 2), 5).map((value, i) => (i % 4 === 0 ? 0 : value)));
+    const wide = place(randoms(4 * rows * stride, 8));
+    const w = place(randoms(36, 6));
+    for (const kernel of both) {
+      kernel.gram(out, stride, a, rows + 1, rows, b, columns + 2, columns, 9, w, 1, lower);
+      kernel.gram(wide, stride, a, rows + 1, rows, b, columns + 2, columns, 9, w, 2, lower);
+    }
     expectAlike(both, out, 2 * rows * stride, `gram ${rows}×${columns}`);
+    expectAlike(both, wide, 4 * rows * stride, `gram ${rows}×${columns}, two pairs`);
+
+    const square = place(randoms(2 * rows * stride, 9));
+    const scratch = place(new Float64Array(18 * rows));
+    const before = both[0].memory().slice(square / 8, square / 8 + 2 * rows * stride);
+    for (const kernel of both) kernel.denseGram(square, stride, a, rows + 1, rows, 9, w, scratch);
+    for (let p = 0; p < rows; p++) {
+      for (let q = 0; q <= p; q++) {
+        for (let lane = 0; lane < 2; lane++) {
+          let sum = before[2 * (p * stride + q) + lane]!;
+          for (let n = 0; n < 9; n++) {
+            sum += sparse[n * (rows + 1) + p]! * sparse[n * (rows + 1) + q]! * both[0].memory()[w / 8 + 2 * n + lane]!;
+          }
+          for (const kernel of both) {
+            const value = kernel.memory()[square / 8 + 2 * (p * stride + q) + lane]!;
+            assertClose(value, sum, { abs: 1e-13, because: `${kernel.kind}, denseGram of ${rows}` });
+          }
+        }
+      }
+    }
   }
 });
 
