@@ -1,7 +1,7 @@
 // The desk behind the page that `open` serves: changes to the notebook's file, one at a time, each against the version it was
 // made for, whole or not at all.
 
-import { lstat, readFile, realpath } from "node:fs/promises";
+import { lstat, readdir, readFile, realpath } from "node:fs/promises";
 import { basename, dirname, isAbsolute, join, relative, resolve } from "node:path";
 import type { DeskAnswer, RationaleDraft } from "../runtime/desk.ts";
 import type { Action } from "../runtime/server/local-server.ts";
@@ -69,7 +69,10 @@ export function createDesk(
   async function keepBoth(version: string): Promise<{ sentence: string; kept: string }> {
     const stem = basename(place.path).replace(/\.m?ts$/, "");
     const time = new Date().toISOString().slice(0, 19).replaceAll(":", "-");
-    const kept = `${stem}.kept-${time}.ts.txt`;
+    // two within one second are two versions
+    const taken = new Set(await readdir(dirname(place.path)));
+    let kept = `${stem}.kept-${time}.ts.txt`;
+    for (let i = 2; taken.has(kept); i++) kept = `${stem}.kept-${time}-${i}.ts.txt`;
     await writeWhole(join(dirname(place.path), kept), kept, version);
     return {
       kept,

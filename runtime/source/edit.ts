@@ -58,10 +58,12 @@ export function viewSource(source: string, file: string): SourceView {
  * @throws {RewriteRefused} a change that would spoil the notebook
  */
 export function rewritten({ source, file }: Pick<SourceView, "source" | "file">, edits: readonly Edit[]): string {
+  // new lines end as the file's own do, and what has no place in UTF-8 is what a reader of the file would find
+  const lineEnd = /\r?\n/.exec(source)?.[0] ?? "\n";
   let text = "";
   let at = 0;
   for (const edit of [...edits].sort((a, b) => a.start - b.start || a.end - b.end)) {
-    text += source.slice(at, edit.start) + edit.text;
+    text += source.slice(at, edit.start) + wellFormed(edit.text).replace(/\r?\n/g, lineEnd);
     at = edit.end;
   }
   text += source.slice(at);
@@ -70,6 +72,9 @@ export function rewritten({ source, file }: Pick<SourceView, "source" | "file">,
   if (problem) throw new RewriteRefused(problem.message, problem.line);
   return text;
 }
+
+/** Halves of surrogate pairs that stand alone become U+FFFD, as writing them to a file would make them. */
+const wellFormed = (text: string): string => text.replace(/\p{Surrogate}/gu, "\ufffd");
 
 /** @throws {RewriteRefused} no cell of that name */
 export function draftNamed({ module, file }: SourceView, name: string): Draft {

@@ -40,9 +40,10 @@ export function forkSource(source: string, file: string, details: ForkDetails): 
   const { name, from, today, texts, moved } = details;
   const line = `// Forked from ${oneLine(from)} on ${today}: ${oneLine(name)}.\n`;
   // of a fork of a fork, the newest line says enough: the older one stands in the file that it names
-  const former = /^\/\/ Forked from [^\n]*\n/.exec(source)?.[0].length ?? 0;
+  const start = source.startsWith("\ufeff") ? 1 : 0;
+  const former = /^\/\/ Forked from [^\n]*\n/.exec(source.slice(start))?.[0].length ?? 0;
   return rewritten(view, [
-    { start: 0, end: former, text: line },
+    { start, end: start + former, text: line },
     ...givenEdits(view, texts),
     ...titleEdits(view, name),
     ...inheritedEdits(view, from),

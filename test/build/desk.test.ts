@@ -131,6 +131,47 @@ test("desk: a request of the wrong shape is refused and nothing is written", asy
   expect(await readdir(folder)).toEqual(["decided.ts"]);
 });
 
+test("desk: two conflicts within one second keep two versions", async () => {
+  const { folder, path, source, desk } = await decided();
+  await writeFile(path, `${source}// theirs\n`);
+  const keep = (side: string) => ask(desk, "keepGivens", { base: source, texts: { side } });
+  const answers = (await Promise.all(["2 m", "3 m", "4 m"].map(keep))) as { kept: string }[];
+  const versions = await Promise.all(answers.map(({ kept }) => readFile(join(folder, kept), "utf8")));
+  expect(versions.map((text) => /given\("(\d m)"/.exec(text)?.[1])).toEqual(["2 m", "3 m", "4 m"]);
+});
+
+test("desk: a file with the line ends and the mark of another system keeps them", async () => {
+  const { path, source, desk } = await decided();
+  const theirs = `\ufeff${source.replaceAll("\n", "\r\n")}`;
+  await writeFile(path, theirs);
+  const now = async () => readFile(path, "utf8");
+  const done = async (name: string, body: object) =>
+    expect(await ask(desk, name, { base: await now(), ...body }), name).toMatchObject({ ok: true });
+  await done("keepGivens", { texts: { side: "2 m" } });
+  expect(await now()).toBe(theirs.replace('given("1.2 m"', 'given("2 m"'));
+  await done("replaceCell", { cell: "area", source: "export const area =\n  side ** 2;" });
+  await done("addNote", { after: "areas", markdown: "Two\n\nparagraphs." });
+  await done("agreeAgain", { cell: "squareChosen", author: "B. Cutter", now: { Area: 4, Side: 2 } });
+  await done("keepGivens", { texts: { remark: "z,r\n0,1\n" } });
+  const text = await now();
+  expect(text.startsWith("\ufeff//")).toBe(true);
+  expect(text.match(/(?<!\r)\n|\r(?!\n)/g)).toBeNull();
+  expect(await ask(desk, "fork", { name: "Other ends", texts: {} })).toMatchObject({ ok: true });
+  expect(await readFile(path.replace("decided", "other-ends"), "utf8")).toMatch(
+    /^\ufeff\/\/ Forked from [^\n]*\r\n\/\//,
+  );
+});
+
+test("desk: half a surrogate pair in a text is written as what the file can hold, and can be taken back", async () => {
+  const { path, source, desk } = await decided();
+  const note = await ask(desk, "addNote", { base: source, after: "areas", markdown: "half \ud83d of a face" });
+  expect(note).toMatchObject({ ok: true });
+  const written = await readFile(path, "utf8");
+  expect(written).toContain("note`half \ufffd of a face`;");
+  expect(await ask(desk, "undo", { base: written })).toMatchObject({ ok: true });
+  expect(await readFile(path, "utf8")).toBe(source);
+});
+
 test("desk: killed two hundred times while it keeps, the file is the old or the new one, whole", async () => {
   const { folder, source } = await decided();
   const script = join(folder, "keeper.mjs");
