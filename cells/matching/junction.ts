@@ -4,6 +4,7 @@ import { requireInteger, requirePositive } from "../check.ts";
 import { speedOfLight } from "../constants.ts";
 import { cutoffFrequency, modeName } from "../guide/mode.ts";
 import { type ComplexVector, complexVector } from "../math/complex.ts";
+import { createKernel } from "../math/kernel/kernel.ts";
 import { apertureModeList } from "../radiation/aperture-pattern.ts";
 import { chainOf } from "./chain.ts";
 import { guardedGammaSquared, matchedAdmittance } from "./line.ts";
@@ -59,7 +60,7 @@ export function stepScattering(options: StepOptions): StepScattering {
     );
   }
   const band = bandOf([frequency]);
-  const memory = createMemory();
+  const memory = createMemory(createKernel());
   const pieces = [leftRadius, rightRadius].map((radius) => ({ length: 0, startRadius: radius, endRadius: radius }));
   const chain = chainOf(pieces, {
     edgeFunctions: functions,

@@ -1,6 +1,7 @@
 // The entrance to mode matching.
 
 import type { HornProfile } from "../guide/horn-profile.ts";
+import { createKernel, type Kernel } from "../math/kernel/kernel.ts";
 import { analyseBand, type BandAnalysis } from "./band-analysis.ts";
 import type { BandOptions } from "./band-options.ts";
 import { createMemory } from "./memory.ts";
@@ -24,8 +25,17 @@ export function bandAnalysis(
   options: BandOptions,
   progress?: (share: number) => void,
 ): BandAnalysis {
-  return createMatcher().band(profile, options, progress);
+  const kernel = spareKernels.pop() ?? createKernel();
+  try {
+    return analyseBand(createMemory(kernel), profile, options, progress);
+  } finally {
+    kernel.reset();
+    spareKernels.push(kernel);
+  }
 }
+
+/** A kernel's memory takes longer to get than a small horn to solve: one is handed from call to call, emptied. */
+const spareKernels: Kernel[] = [];
 
 /** Mode matching that keeps couplings and section results from call to call, while a control turns. Not plain data. */
 export interface Matcher {
@@ -34,6 +44,6 @@ export interface Matcher {
 }
 
 export function createMatcher(): Matcher {
-  const memory = createMemory();
+  const memory = createMemory(createKernel());
   return { band: (profile, options, progress) => analyseBand(memory, profile, options, progress) };
 }

@@ -1,7 +1,7 @@
 // What a matcher keeps between calls: couplings that depend on the geometry alone, and sums that depend on band and geometry.
 // Only what a changed profile needs anew is computed.
 
-import { createKernel, type Kernel } from "../math/kernel/kernel.ts";
+import type { Kernel } from "../math/kernel/kernel.ts";
 import type { ApertureBasis, Side } from "./aperture-basis.ts";
 import type { Aperture, Chain, Guide } from "./chain.ts";
 import { couplings, type RealMatrix } from "./couplings.ts";
@@ -29,8 +29,8 @@ const mostBytes = 64e6;
 /** A kept entry that so many calls had no use for is forgotten. */
 const keptCalls = 6;
 
-export function createMemory(): Memory {
-  const kernel = createKernel();
+/** @param kernel its own, empty */
+export function createMemory(kernel: Kernel): Memory {
   let work: WorkSpace | undefined;
   let table = modeTable(64);
   let call = 0;

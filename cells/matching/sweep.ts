@@ -96,20 +96,24 @@ function sweepPair(
     const far = bases[a + 1]?.left;
     const nextCount = far ? counts[a + 1]! : outPorts;
     const size = nextCount + inPorts;
-    memory.fill(0, t / 8, t / 8 + lanes * size * size);
     if (far) {
       writeLines(guide, section.explicit);
-      memory.fill(0, x / 8, x / 8 + lanes * count * size);
       if (section.transfer) {
         const { columns } = far.modes;
         kernel.combine(x, size, section.transfer, columns, count, nextCount, nodes, work.weights, 0, 0);
+        // What high modes have just set needs no clearing: only the rows of the ports.
+        memory.fill(0, t / 8 + lanes * nextCount * size, t / 8 + lanes * size * size);
+      } else {
+        memory.fill(0, x / 8, x / 8 + lanes * count * size);
+        memory.fill(0, t / 8, t / 8 + lanes * size * size);
       }
       const [p, q] = [near.modes.columns, far.modes.columns];
       const { explicit } = section;
       kernel.gram(x, size, near.address, p, count, far.address, q, nextCount, explicit, work.transfer, 1, 0);
-      addSquare(t, size, far, section.right, explicit, nextCount);
+      addSquare(t, size, far, section.right, explicit, nextCount, 0);
     } else {
       writeEnd(guide, section.explicit, outPorts);
+      memory.fill(0, t / 8, t / 8 + lanes * size * size);
       writePortColumns(size, 0, near.modes, outPorts);
     }
     addSquare(s, stride, near, section.left, section.explicit, count);
@@ -149,11 +153,22 @@ function sweepPair(
   }
   throw new Error("sweep: a chain must have an aperture");
 
-  /** Adds a guide's own admittance at one of its apertures: high modes interpolated, explicit ones from `work.self`. */
-  function addSquare(to: number, stride: number, side: Side, high: number, explicit: number, count: number): void {
+  /**
+   * Adds a guide's own admittance at one of its apertures: high modes interpolated, explicit ones from `work.self`. Where not
+   * `add`, the sum over high modes, if there is one, is what the square begins with.
+   */
+  function addSquare(
+    to: number,
+    stride: number,
+    side: Side,
+    high: number,
+    explicit: number,
+    count: number,
+    add: 0 | 1 = 1,
+  ): void {
     const { address, dense } = side;
     const { columns } = side.modes;
-    if (high) kernel.combine(to, stride, high, columns, count, count, nodes, work.weights, 1, 1);
+    if (high) kernel.combine(to, stride, high, columns, count, count, nodes, work.weights, 1, add);
     if (dense) kernel.denseGram(to, stride, address, columns, count, explicit, work.self, scratch);
     else kernel.gram(to, stride, address, columns, count, address, columns, count, explicit, work.self, 1, 1);
   }
