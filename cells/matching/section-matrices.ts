@@ -16,13 +16,13 @@ export interface WaveBand {
 }
 
 /** Modes whose cutoff lies below this multiple of the highest frequency stay explicit. */
-const explicitBelow = 2.5;
+const explicitBelow = 1.7;
 
 /** Wanted relative error of the interpolated sums. */
-const interpolationError = 1e-6;
+const interpolationError = 2e-5;
 
 /**
- * Chebyshev nodes in k²: a mode's √(kc² − k²) is smooth up to its branch point at kc ≥ 2.5·k_high, so that the error falls as
+ * Chebyshev nodes in k²: a mode's √(kc² − k²) is smooth up to its branch point at kc ≥ 1.7·k_high, so that the error falls as
  * (x + √(x² − 1))^−n, x the branch point's place with the band at −1…1 (Trefethen 2013, theorem 8.2). A few frequencies
  * are their own nodes.
  */

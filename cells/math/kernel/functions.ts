@@ -23,7 +23,7 @@ export interface KernelFunctions {
   ): void;
   /**
    * out[p, q] += Σ_n a[n, p]·b[n, q]·w[n] (a, b without frequency); its lower half where `lower`. Zeros are passed over.
-   * Every element of out and w is `pairs` pairs; rows of a and b are aStride and bStride long. bColumns ≤ 256
+   * Every element of out and w is `pairs` pairs; rows of a and b are aStride and bStride long. aColumns, bColumns ≤ 128
    */
   gram(
     out: number,

@@ -43,12 +43,15 @@ export function combine(
   }
 }
 
-/** Places of the nonzero elements of a row, from address 0 on: up to 256. */
-function nonzeros(row: usize, columns: i32): i32 {
+/** Where the places of the nonzero elements of two rows are listed: the first kilobyte, up to 128 each. */
+const LIST_A: usize = 0;
+const LIST_B: usize = 512;
+
+function nonzeros(row: usize, columns: i32, list: usize): i32 {
   let count = 0;
   for (let q = 0; q < columns; q++) {
     if (load<f64>(row + ((<usize>q) << 3)) === 0) continue;
-    store<i32>((<usize>count) << 2, q);
+    store<i32>(list + ((<usize>count) << 2), q);
     count++;
   }
   return count;
@@ -72,20 +75,26 @@ export function gram(
   pairs: i32,
   lower: i32,
 ): void {
+  const step = (<usize>pairs) << 4;
   for (let n = 0; n < rows; n++) {
     const aRow = a + ((<usize>(n * aStride)) << 3);
     const bRow = b + ((<usize>(n * bStride)) << 3);
-    const listed = nonzeros(bRow, bColumns);
-    for (let p = 0; p < aColumns; p++) {
-      const value = load<f64>(aRow + ((<usize>p) << 3));
-      if (value === 0) continue;
+    const bCount = nonzeros(bRow, bColumns, LIST_B);
+    const same = aRow === bRow && aColumns === bColumns;
+    const listA = same ? LIST_B : LIST_A;
+    const aCount = same ? bCount : nonzeros(aRow, aColumns, LIST_A);
+    for (let i = 0; i < aCount; i++) {
+      const p = load<i32>(listA + ((<usize>i) << 2));
+      const value = v128.load64_splat(aRow + ((<usize>p) << 3));
+      // Of one and the same row, the lower half is what the list holds up to here.
+      const end = lower && same ? i + 1 : bCount;
       for (let pair = 0; pair < pairs; pair++) {
-        const factor = f64x2.mul(f64x2.splat(value), v128.load(at(w, n * pairs + pair)));
+        const factor = f64x2.mul(value, v128.load(at(w, n * pairs + pair)));
         const row = at(out, p * stride * pairs + pair);
-        for (let i = 0; i < listed; i++) {
-          const q = load<i32>((<usize>i) << 2);
+        for (let j = 0; j < end; j++) {
+          const q = load<i32>(LIST_B + ((<usize>j) << 2));
           if (lower && q > p) break;
-          const to = row + ((<usize>(q * pairs)) << 4);
+          const to = row + <usize>q * step;
           v128.store(to, f64x2.add(v128.load(to), f64x2.mul(factor, v128.load64_splat(bRow + ((<usize>q) << 3)))));
         }
       }
