@@ -15,13 +15,16 @@ export interface RestsOnDetails {
  * @param now the live number: SI, or a level in decibels; null where there is none any more
  * @throws {TypeError | RangeError} no label, texts that are no quantity of one kind, nothing it may move by, `now` not finite
  */
-export function restsOn(label: string, now: number | null, { agreed, mayMove }: RestsOnDetails): RestedOn {
+export function restsOn(label: string, now: number | null, details: RestsOnDetails): RestedOn {
   if (typeof label !== "string" || label.trim() === "")
     throw new TypeError("restsOn: label must say which number it is");
   if (now !== null && !Number.isFinite(now)) throw new RangeError(`restsOn: ${label} must be finite; got ${now}`);
-  const then = read(`agreed value of ${label}`, agreed);
+  if (typeof details?.agreed !== "string" || typeof details.mayMove !== "string")
+    throw new TypeError(`restsOn: ${label} needs agreed and mayMove as texts like "96.6 mm"`);
+  const { agreed, mayMove } = details;
+  const then = read(`restsOn: the agreed value of ${label}`, agreed);
   const unit = unitNamed(then.unit);
-  const slack = read(`what ${label} may move by`, mayMove, then.unit);
+  const slack = read(`restsOn: what ${label} may move by`, mayMove, then.unit);
   const tolerance = Math.abs(slack.value - unit.offset);
   if (!(tolerance > 0)) throw new RangeError(`restsOn: what ${label} may move by must be above 0; got ${mayMove}`);
   return {
@@ -68,12 +71,20 @@ export interface RationaleDetails {
  */
 export function rationale(beside: unknown, details: RationaleDetails): Rationale {
   void beside;
+  if (typeof details !== "object" || details === null)
+    throw new TypeError("rationale: needs what was decided, why and on which numbers as its second argument");
   const { decision, chosen, author, date, reasons, numbers, history = [], inherited } = details;
   for (const [name, text] of Object.entries({ decision, chosen, author }))
     if (typeof text !== "string" || text.trim() === "")
       throw new TypeError(`rationale: ${name} must be said in words; got nothing`);
   if (!Array.isArray(numbers) || numbers.length === 0)
     throw new RangeError("rationale: numbers must hold at least one number that the decision rests on; got none");
+  if (!numbers.every((one) => typeof one?.label === "string"))
+    throw new TypeError("rationale: numbers must each be written by restsOn(…)");
+  if (typeof reasons !== "string" && typeof reasons?.markdown !== "string")
+    throw new TypeError("rationale: reasons must be a note or text; got nothing");
+  if (!Array.isArray(history) || !history.every((one) => typeof one?.agreed === "object" && one.agreed !== null))
+    throw new TypeError("rationale: history must be a list of { author, date, agreed }");
   const labels = numbers.map(({ label }: RestedOn) => label);
   const twice = labels.find((label, i) => labels.indexOf(label) !== i);
   if (twice !== undefined)
@@ -97,7 +108,7 @@ function former({ author, date, agreed }: NonNullable<RationaleDetails["history"
     author,
     date: day("rationale: date of a former agreement", date),
     agreed: Object.entries(agreed).map(([label, text]) => {
-      const { value, unit, digits } = read(`former ${label}`, text);
+      const { value, unit, digits } = read(`rationale: the former ${label}`, text);
       return { label, value, ...restedUnit(unitNamed(unit), digits) };
     }),
   };
@@ -109,7 +120,7 @@ function read(what: string, text: string, unitText?: string): { value: number; u
     const [, decimals = ""] = /^[+-]?\d*\.?(\d*)/.exec(tidy) ?? [];
     return { value, unit: unit.text, digits: Math.min(15, decimals.length) };
   } catch (error) {
-    if (error instanceof QuantityError) throw new RangeError(`restsOn: the ${what} ${error.message}`);
+    if (error instanceof QuantityError) throw new RangeError(`${what} ${error.message}`);
     throw error;
   }
 }

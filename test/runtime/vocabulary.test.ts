@@ -11,6 +11,8 @@ import {
   margin,
   markdown,
   note,
+  rationale,
+  restsOn,
   show,
   table,
 } from "../../runtime/index.ts";
@@ -307,4 +309,35 @@ test("background: the argument list is checked against the function's own, progr
   };
   // The compiler is the test: `tsc` refuses this file if one of the lines above were accepted.
   expect(typed()).toBeInstanceOf(Promise);
+});
+
+describe("rationale and restsOn: what can't be taken is told in words", () => {
+  const number = () => restsOn("Side", 1, { agreed: "1 m", mayMove: "1 mm" });
+  const sound = { decision: "d", chosen: "c", author: "a", date: "2026-12-01", reasons: "r", numbers: [number()] };
+  test.each<[string, () => unknown, string]>([
+    ["no details", () => rationale(1, undefined as never), "rationale: needs what was decided"],
+    ["no words", () => rationale(1, { ...sound, chosen: " " }), "rationale: chosen must be said in words; got nothing"],
+    ["no day", () => rationale(1, { ...sound, date: "2026-02-30" }), "must be a day like 2026-11-30; got 2026-02-30"],
+    [
+      "no reasons",
+      () => rationale(1, { ...sound, reasons: null as never }),
+      "rationale: reasons must be a note or text",
+    ],
+    ["a bare number", () => rationale(1, { ...sound, numbers: [null as never] }), "must each be written by restsOn"],
+    ["the same label twice", () => rationale(1, { ...sound, numbers: [number(), number()] }), 'got "Side" twice'],
+    ["a history that is none", () => rationale(1, { ...sound, history: 3 as never }), "history must be a list of"],
+    [
+      "nothing agreed",
+      () => restsOn("Side", 1, null as never),
+      'Side needs agreed and mayMove as texts like "96.6 mm"',
+    ],
+    [
+      "another kind",
+      () => restsOn("Side", 1, { agreed: "1 m", mayMove: "1 GHz" }),
+      "restsOn: what Side may move by must be",
+    ],
+    ["no number", () => restsOn("Side", Number.NaN, { agreed: "1 m", mayMove: "1 m" }), "Side must be finite; got NaN"],
+  ])("%s", (_words, make, message) => {
+    expect(make).toThrow(message);
+  });
 });
