@@ -20,7 +20,7 @@ test("bandAnalysis: the corrugated horn's trapped resonances at its low edge are
   // They are where S11 says so: sampled across one, it goes through a large part of the unit disk.
   const { frequency, width } = listed[3]!;
   const across = bandAnalysis(profiles.corrugated, {
-    frequencies: spread(frequency - width, frequency + width, 21),
+    frequencies: spread(frequency - 3 * width, frequency + 3 * width, 41),
     level,
   });
   const sizes = across.s11.re.map((re, i) => Math.hypot(re, across.s11.im[i]!));

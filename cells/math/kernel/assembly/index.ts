@@ -83,6 +83,20 @@ export function gram(
     const same = aRow === bRow && aColumns === bColumns;
     const listA = same ? LIST_B : LIST_A;
     const aCount = same ? bCount : nonzeros(aRow, aColumns, LIST_A);
+    if (!lower && pairs === 1 && bCount < aCount) {
+      // The longer list inside.
+      const weight = v128.load(at(w, n));
+      for (let j = 0; j < bCount; j++) {
+        const q = load<i32>(LIST_B + ((<usize>j) << 2));
+        const factor = f64x2.mul(v128.load64_splat(bRow + ((<usize>q) << 3)), weight);
+        for (let i = 0; i < aCount; i++) {
+          const p = load<i32>(LIST_A + ((<usize>i) << 2));
+          const to = at(out, p * stride + q);
+          v128.store(to, f64x2.add(v128.load(to), f64x2.mul(factor, v128.load64_splat(aRow + ((<usize>p) << 3)))));
+        }
+      }
+      continue;
+    }
     for (let i = 0; i < aCount; i++) {
       const p = load<i32>(listA + ((<usize>i) << 2));
       const value = v128.load64_splat(aRow + ((<usize>p) << 3));
