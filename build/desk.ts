@@ -13,7 +13,7 @@ import { addRationale, agreeAgain, editRationale } from "../runtime/source/ratio
 import { Failure } from "./command/failure.ts";
 import { today, writeFork } from "./fork.ts";
 import type { NotebookPlace } from "./notebook-place.ts";
-import { writeWhole } from "./write-export.ts";
+import { sweepLeftovers, writeWhole } from "./write-export.ts";
 
 /** Most characters of any text that a page may send. */
 const LONGEST = 1_000_000;
@@ -30,7 +30,7 @@ export function createDesk(
 ): Record<string, Action> {
   const file = place.label;
   let last: { before: string; after: string; what: string } | undefined;
-  let queue: Promise<unknown> = Promise.resolve();
+  let queue: Promise<unknown> = sweepLeftovers(place.path);
   /** one write after the other, so that two pages never look at the same version */
   const inTurn = (action: (body: Body) => Promise<DeskAnswer>): Action => {
     return (body) => {

@@ -1,7 +1,7 @@
 // Puts an exported file in its place: whole or not at all, and never over a file that isn't an export.
 
 import { randomBytes } from "node:crypto";
-import { open, rename, rm, stat } from "node:fs/promises";
+import { open, readdir, rename, rm, stat } from "node:fs/promises";
 import { basename, dirname, join } from "node:path";
 import { Failure, systemWords } from "./command/failure.ts";
 import { looksExported } from "./export-record.ts";
@@ -64,5 +64,19 @@ export async function writeWhole(
     await rm(fresh, { force: true });
     if (error instanceof Failure) throw error;
     throw new Failure(`can't write ${shownAs}: ${systemWords(error)}.`);
+  }
+}
+
+/** A write takes moments; what is older was left by a program that was killed meanwhile. */
+const LEFT_AFTER_MS = 60_000;
+
+/** Removes what killed writes of a file left beside it. Never throws: it is only tidiness. */
+export async function sweepLeftovers(path: string): Promise<void> {
+  const start = `.${basename(path)}.`;
+  const names = await readdir(dirname(path)).catch(() => []);
+  for (const name of names.filter((one) => one.startsWith(start) && /^[0-9a-f]{12}$/.test(one.slice(start.length)))) {
+    const left = join(dirname(path), name);
+    const facts = await stat(left).catch(() => undefined);
+    if (facts?.isFile() && Date.now() - facts.mtimeMs > LEFT_AFTER_MS) await rm(left, { force: true }).catch(() => {});
   }
 }

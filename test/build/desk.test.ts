@@ -1,7 +1,7 @@
 // The desk behind the page: every write against the version it was made for, whole or not at all, and nothing outside its folder.
 
 import { spawn } from "node:child_process";
-import { chmod, mkdir, readdir, readFile, rename, stat, symlink, writeFile } from "node:fs/promises";
+import { chmod, mkdir, readdir, readFile, rename, stat, symlink, utimes, writeFile } from "node:fs/promises";
 import { join } from "node:path";
 import { build } from "esbuild";
 import { expect, test } from "vitest";
@@ -170,6 +170,20 @@ test("desk: half a surrogate pair in a text is written as what the file can hold
   expect(written).toContain("note`half \ufffd of a face`;");
   expect(await ask(desk, "undo", { base: written })).toMatchObject({ ok: true });
   expect(await readFile(path, "utf8")).toBe(source);
+});
+
+test("desk: what a killed write left beside the file is taken away, and nothing else", async () => {
+  const { folder, path, source } = await decided();
+  const hour = new Date(Date.now() - 3_600_000);
+  const names = [".decided.ts.0123456789ab", ".decided.ts.0123456789zz", ".other.ts.0123456789ab", ".decided.ts.fresh"];
+  for (const name of names) {
+    await writeFile(join(folder, name), "half");
+    await utimes(join(folder, name), hour, hour);
+  }
+  await writeFile(join(folder, ".decided.ts.ba9876543210"), "being written just now");
+  const desk = createDesk({ path, label: "decided.ts" });
+  expect(await ask(desk, "keepGivens", { base: source, texts: { side: "2 m" } })).toMatchObject({ ok: true });
+  expect((await readdir(folder)).sort()).toEqual([...names.slice(1), ".decided.ts.ba9876543210", "decided.ts"].sort());
 });
 
 test("desk: killed two hundred times while it keeps, the file is the old or the new one, whole", async () => {
