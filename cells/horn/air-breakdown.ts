@@ -66,8 +66,8 @@ export interface BreakdownMargin {
   peakField: number;
   /** V/m at the altitude */
   breakdownField: number;
-  /** dB of power up to breakdown; negative beyond it, Infinity for no power */
-  marginDb: number;
+  /** dB of power up to breakdown; negative beyond it; null for no power, which has no margin to tell */
+  marginDb: number | null;
   /** W, at which the field reaches breakdown */
   breakdownPower: number;
   /** W, less by the margin asked for */
@@ -96,7 +96,7 @@ export function breakdownMargin(
   return {
     peakField,
     breakdownField: limit,
-    marginDb: 10 * Math.log10(breakdownPower / guide.power),
+    marginDb: guide.power === 0 ? null : 10 * Math.log10(breakdownPower / guide.power),
     breakdownPower,
     allowedPower,
     enough: guide.power <= allowedPower,

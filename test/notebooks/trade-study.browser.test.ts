@@ -54,7 +54,7 @@ test.each([
 ])("trade study's export, %s: results can be read with scripts off", async (_, path) => {
   const { page, complaints, close } = await openFile(browser, path, { scripts: false });
   const text = (await shownText(page)).replace(/\s/g, " ");
-  const { rows } = (await headless("--only", "trade")).cells.trade as Trade;
+  const { rows } = (await headless("--only", "matchedTrade")).cells.matchedTrade as Trade;
   for (const row of rows) {
     expect(row.feasible).toBe(true);
     expect(text).toContain(row.gainDbi!.toFixed(2));

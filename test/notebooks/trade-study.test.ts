@@ -111,7 +111,7 @@ test("trade study: 2,000 random changes never show a stale value or no number as
   };
   study.subscribe(look);
   for (let change = 0; change < 2000; ) {
-    const burst = 1 + Math.floor(random() * 8);
+    const burst = 1 + Math.floor(random() * 40);
     for (let i = 0; i < burst; i++, change++) {
       const given = pick(study.givens);
       const kind = random();
@@ -137,7 +137,7 @@ test("trade study: 2,000 random changes never show a stale value or no number as
   }
   expect([...found]).toEqual([]);
   expect(refused).toBeGreaterThan(300);
-  expect(looked).toBeGreaterThan(300);
+  expect(looked).toBeGreaterThan(80);
   expect(failures).toBeGreaterThan(0);
   const fresh = createStudy(module, {
     givens: Object.fromEntries(study.givens.map(({ name, text }) => [name, text])),
@@ -147,4 +147,4 @@ test("trade study: 2,000 random changes never show a stale value or no number as
   expect(study.cells.filter(({ state }) => state !== "current" && state !== "failed")).toEqual([]);
   study.dispose();
   fresh.dispose();
-}, 240_000);
+}, 400_000);
