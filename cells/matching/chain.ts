@@ -1,6 +1,7 @@
 // A horn as a chain of uniform guides: tapers become staircases, and each guide gets its number of modes.
 
 import { isGuide, type Piece } from "./pieces.ts";
+import type { Pocket } from "./pockets.ts";
 
 /** A uniform guide of the chain, m. */
 export interface Guide {
@@ -20,8 +21,10 @@ export type ApertureKind = "smooth" | "step" | "edge";
 
 export interface Aperture {
   kind: ApertureKind;
-  /** basis functions */
+  /** basis functions, those of pockets included */
   count: number;
+  /** pocket that opens into the larger guide here, and how many of its modes are functions */
+  pocket?: { ring: Pocket; count: number };
 }
 
 export interface Chain {
@@ -50,6 +53,8 @@ const shallowAbove = 0.96;
 export function chainOf(pieces: Piece[], fineness: Fineness): Chain {
   const guides: Guide[] = [];
   const smooth: boolean[] = [];
+  /** by the place of the aperture */
+  const pockets = new Map<number, Pocket>();
   const append = (radius: number, length: number, isSmooth: boolean): void => {
     const before = guides.at(-1);
     if (before && before.radius === radius) before.length += length;
@@ -62,6 +67,9 @@ export function chainOf(pieces: Piece[], fineness: Fineness): Chain {
     const { startRadius, endRadius, length } = piece;
     if (isGuide(piece)) {
       append(startRadius, length, false);
+      for (const pocket of piece.pockets ?? []) {
+        pockets.set(pocket.side === "start" ? guides.length - 2 : guides.length - 1, pocket);
+      }
       return;
     }
     const n = fineness.sections[p]!;
@@ -81,6 +89,12 @@ export function chainOf(pieces: Piece[], fineness: Fineness): Chain {
   const apertures = smooth.map((isSmooth, i): Aperture => {
     if (isSmooth) return { kind: "smooth", count: fineness.modeCount };
     const [a, b] = [guides[i]!.radius, guides[i + 1]!.radius];
+    const ring = pockets.get(i);
+    if (ring) {
+      const pocketCount = Math.max(4, fineness.edgeFunctions - 3);
+      const count = edgeFunctionsAt(Math.min(a, b), fineness) + pocketCount;
+      return { kind: "edge", count, pocket: { ring, count: pocketCount } };
+    }
     return isShallow(a, b)
       ? { kind: "step", count: fineness.modeCount }
       : { kind: "edge", count: edgeFunctionsAt(Math.min(a, b), fineness) };
@@ -96,7 +110,7 @@ const isShallow = (a: number, b: number): boolean => Math.min(a, b) > shallowAbo
 
 /** Whether any step of the metal is deep enough for edge functions. */
 export function hasEdges(pieces: Piece[]): boolean {
-  return pieces.some((piece, p) => p > 0 && !isShallow(pieces[p - 1]!.endRadius, piece.startRadius));
+  return pieces.some((piece, p) => piece.pockets || (p > 0 && !isShallow(pieces[p - 1]!.endRadius, piece.startRadius)));
 }
 
 /** Travelling modes for which the level's number of functions is meant: those of an aperture three wavelengths wide. */

@@ -7,6 +7,7 @@ import type { Aperture, Chain, Guide } from "./chain.ts";
 import { couplings, type RealMatrix } from "./couplings.ts";
 import { edgeCouplings, edgeTail } from "./edge-basis.ts";
 import { type ModeTable, modeTable } from "./mode-table.ts";
+import { withPocket } from "./pocket-basis.ts";
 import { type SectionMatrices, sectionMatrices, type WaveBand } from "./section-matrices.ts";
 import { taperCouplings, taperGenerator } from "./taper-couplings.ts";
 import { type WorkSpace, workSpace } from "./work-space.ts";
@@ -92,12 +93,20 @@ export function createMemory(kernel: Kernel): Memory {
     return table;
   }
 
-  function sideOf({ kind, count }: Aperture, guide: Guide, radius: number): Side {
+  function sideOf({ kind, count, pocket }: Aperture, guide: Guide, radius: number): Side {
     const { modeCount } = guide;
-    return sides.get(`${kind} ${count} ${radius} ${guide.radius} ${modeCount}`, () => {
+    const behind = pocket ? `${pocket.ring.innerRadius} ${pocket.ring.outerRadius} ${pocket.count}` : "";
+    return sides.get(`${kind} ${count} ${radius} ${guide.radius} ${modeCount} ${behind}`, () => {
       const id = nextId++;
       const placed = (modes: RealMatrix, dense: boolean): Side => ({ id, modes, dense, address: place(modes.values) });
       const ratio = radius / guide.radius;
+      if (pocket) {
+        const edges = count - pocket.count;
+        const tail = edgeTail(ratio, edges, modeCount, tableOf(modeCount));
+        const modes = edgeMatrix(ratio, edges, modeCount);
+        const side = withPocket({ modes, tail }, pocket, guide, tableOf(modeCount));
+        return { ...placed(side.modes, false), tail: { ...side.tail, radius } };
+      }
       if (kind === "edge") {
         const tail = { ...edgeTail(ratio, count, modeCount, tableOf(modeCount)), radius };
         return { ...placed(edgeMatrix(ratio, count, modeCount), false), tail };

@@ -9,13 +9,14 @@
 import type { Complex } from "../math/complex.ts";
 import type { Chain } from "./chain.ts";
 import { isTE, type ModeTable } from "./mode-table.ts";
+import { pocketResonances } from "./pocket-basis.ts";
 
 /** Reactances at the ports against the matched admittance: their reflections lie 90° apart. Infinity is a short. */
 export const portReactances = [0, 1, Number.POSITIVE_INFINITY, -1] as const;
 
 /** Resonances below wave number k of the inner guides with both ends shorted: βL = π, 2π, …, for TM also its cutoff. */
-export function shortedResonances({ guides }: Chain, k: number, { chi }: ModeTable): number {
-  let count = 0;
+export function shortedResonances({ guides, apertures }: Chain, k: number, { chi }: ModeTable): number {
+  let count = apertures.reduce((sum, { pocket }) => sum + (pocket ? pocketResonances(pocket, k) : 0), 0);
   for (let g = 1; g < guides.length - 1; g++) {
     const { radius, length, modeCount } = guides[g]!;
     for (let n = 0; n < modeCount && chi[n]! < k * radius; n++) {

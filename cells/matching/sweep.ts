@@ -11,6 +11,7 @@ import type { RealMatrix } from "./couplings.ts";
 import { guardedGammaSquared, matchedAdmittance, writeLine } from "./line.ts";
 import { isTE, type ModeTable } from "./mode-table.ts";
 import { type Answer, answerAt } from "./outcome.ts";
+import { droppedWithPocket, places, pocketAdmittances } from "./pocket-basis.ts";
 import type { Prepared } from "./prepared.ts";
 import { shortedResonances } from "./resonance-count.ts";
 import { nodePairs, nodeWeights, type WaveBand } from "./section-matrices.ts";
@@ -48,8 +49,9 @@ export function portCount({ radius, modeCount }: Guide, { high }: WaveBand, tabl
 }
 
 /** Functions of an aperture that are used: all, or fewer to see what the last ones matter. */
-function usedCount({ kind, count }: Aperture, fewer: boolean): number {
+function usedCount({ kind, count, pocket }: Aperture, fewer: boolean): number {
   if (!fewer || kind === "smooth") return count;
+  if (pocket) return count - droppedWithPocket;
   return kind === "edge" ? count - 2 : Math.max(1, 2 * Math.round(0.35 * count));
 }
 
@@ -119,6 +121,7 @@ function sweepPair(
     addSquare(s, stride, near, section.left, section.explicit, count);
     if (a === 0) writePortColumns(size, nextCount, bases[0]!.left.modes, inPorts);
     else carryPorts(nextCount, size);
+    addPocket(a);
     const diagonal = diagonalOf();
     kernel.eliminate(s, stride, x, t, scratch, count, size);
     notePivots(diagonal);
@@ -171,6 +174,19 @@ function sweepPair(
     if (high) kernel.combine(to, stride, high, columns, count, count, nodes, work.weights, 1, add);
     if (dense) kernel.denseGram(to, stride, address, columns, count, explicit, work.self, scratch);
     else kernel.gram(to, stride, address, columns, count, address, columns, count, explicit, work.self, 1, 1);
+  }
+
+  /** A pocket's modes see its shorted lines behind them. */
+  function addPocket(a: number): void {
+    const { pocket, count: all } = chain.apertures[a]!;
+    if (!pocket) return;
+    const { ring } = places(all - pocket.count, pocket.count);
+    waveNumbers.forEach((k, lane) => {
+      pocketAdmittances(pocket, k).forEach((admittance, i) => {
+        const p = ring[i]!;
+        if (p < count) memory[s / 8 + lanes * p * (stride + 1) + lane]! += admittance;
+      });
+    });
   }
 
   function diagonalOf(): Float64Array {

@@ -50,7 +50,12 @@ export const pageValues = (page: Page): Promise<Values> =>
   });
 
 /** All numbers of two values are alike to 1e-12, everything else is equal. */
-export function expectAlike(actual: unknown, expected: unknown, path = "values"): void {
+export function expectAlike(
+  actual: unknown,
+  expected: unknown,
+  path = "values",
+  tolerance: (path: string) => number = () => 1e-12,
+): void {
   if (typeof expected === "number") {
     // a drawing's level in a null: 1e-16 of the field is more than 1e-12 of a level below −100 dB
     const inNull = expected < -100 && /\.drawing\.data\./.test(path);
@@ -58,15 +63,15 @@ export function expectAlike(actual: unknown, expected: unknown, path = "values")
     const level =
       /D[bB]\b[^.]*$/.test(path) && expected !== 0 ? 4.3e-11 * 10 ** (Math.min(200, Math.abs(expected)) / 20) : 0;
     assertClose(actual as number, expected, {
-      rel: 1e-12,
+      rel: tolerance(path),
       // what is left of two equal lengths, or the logarithm of nearly one, is rounding in either engine
-      abs: inNull ? 1e-3 : Math.max(1e-13, level),
+      abs: inNull ? 1e-3 : Math.max(0.1 * tolerance(path), level),
       because: `${path}: same source, another engine`,
     });
   } else if (typeof expected === "object" && expected !== null) {
     expect(Object.keys(actual as object), path).toEqual(Object.keys(expected));
     for (const [name, part] of Object.entries(expected)) {
-      expectAlike((actual as Record<string, unknown>)[name], part, `${path}.${name}`);
+      expectAlike((actual as Record<string, unknown>)[name], part, `${path}.${name}`, tolerance);
     }
   } else expect(actual, path).toEqual(expected);
 }

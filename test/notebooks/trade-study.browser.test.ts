@@ -67,9 +67,17 @@ test.each([
   await close();
 });
 
+/**
+ * Everything by closed form is the same to 1e-12. What went through mode matching took some thousand eliminations, whose rounding
+ * differs between two builds of one engine: 1e-9.
+ */
+const closedForm =
+  /^values\.(givens|cells\.(reflector|requirement|smooth|dualMode|corrugated|smoothBand|dualModeBand|corrugatedBand|bands|trade|sheet)\b)/;
+const tolerance = (path: string): number => (closedForm.test(path) ? 1e-12 : 1e-9);
+
 test("trade study's export: turned givens give the numbers of `values`, to 1e-12", async () => {
   const { page, complaints, close } = await openFile(browser, live, { scripts: true });
-  expectAlike(await pageValues(page), await headless());
+  expectAlike(await pageValues(page), await headless(), "values", tolerance);
   const views: Record<string, string>[] = [
     { fOverD: "0.35" },
     { fOverD: "0.62", bandHigh: "8.75 GHz", edgeTaper: "12.5 dB" },
@@ -84,7 +92,7 @@ test("trade study's export: turned givens give the numbers of `values`, to 1e-12
     );
     expect(outcome).toEqual({ ok: true });
     const args = Object.entries(texts).flatMap(([name, text]) => ["--set", `${name}=${text}`]);
-    expectAlike(await pageValues(page), await headless(...args));
+    expectAlike(await pageValues(page), await headless(...args), "values", tolerance);
   }
   expect(complaints).toEqual([]);
   await close();
