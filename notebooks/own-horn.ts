@@ -130,7 +130,7 @@ export const overTheBand = figure(
 margin(overTheBand, {
   mark: "reading",
 })`Estimated error of S11 ${show(convergence.reflectionError, "", 5)}, of the field at the mouth
-${show(convergence.crossPolarErrorDb, "dB", 0)}: ${convergence.rule} Power is in balance to ${show(Math.max(...powerBalance.map(Math.abs)))}.`;
+${show(convergence.crossPolarErrorDb, "dB", 0)}: ${convergence.rule} Power is in balance to ${balance < 1e-9 ? "better than 10⁻⁹" : show(balance)}.`;
 margin(overTheBand, { mark: "warning" })`${markdown(analysis.warnings.map(({ text }) => text).join("\n\n"))}`;
 
 note`## Pattern at band centre`;

@@ -425,9 +425,10 @@ margin(models, { mark: "modelsDiffer" })`${markdown(
 const errors = matched.flatMap((band) =>
   band.feasible ? [`${kindNames[band.kind].toLowerCase()} ${show(band.convergence.reflectionError, "", 5)}`] : [],
 );
-margin(models, { mark: "reading" })`Estimated error of S11 from refinement: ${errors}. Power is in balance to ${show(
-  Math.max(0, ...matched.map((band) => (band.feasible ? band.powerBalance : 0))),
-)}.`;
+const balance = Math.max(0, ...matched.map((band) => (band.feasible ? band.powerBalance : 0)));
+margin(models, { mark: "reading" })`Estimated error of S11 from refinement: ${errors}. Power is in balance to ${
+  balance < 1e-9 ? "better than 10⁻⁹" : show(balance)
+}.`;
 
 note`## Modes in the corrugated wall
 
