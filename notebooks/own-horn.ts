@@ -127,6 +127,7 @@ export const overTheBand = figure(
   bandCurves([{ label: "own profile", kind: "custom", points: sweep }], { bandLow, bandHigh, quantities }),
   { caption: "What moves over the band.", basis: `mode matching, ${frequencyHz.length} frequencies` },
 );
+const balance = Math.max(...powerBalance.map(Math.abs));
 margin(overTheBand, {
   mark: "reading",
 })`Estimated error of S11 ${show(convergence.reflectionError, "", 5)}, of the field at the mouth
