@@ -40,7 +40,7 @@ export function plannedLevels({ level, taperSteps: steps }: BandOptions): readon
   }
   if (!level) return levels;
   const only = { ...levels[0]!, ...level };
-  requireInteger("bandAnalysis: level.edgeFunctions", only.edgeFunctions, { min: 5, max: 31 });
+  requireInteger("bandAnalysis: level.edgeFunctions", only.edgeFunctions, { min: 7, max: 31 });
   requireInteger("bandAnalysis: level.taperModes", only.taperModes, { min: 4, max: 120 });
   if (only.taperModes % 2 !== 0) {
     throw new RangeError(`bandAnalysis: level.taperModes must be even; got ${only.taperModes}`);

@@ -39,7 +39,7 @@ export function solutionAt({ memory, pieces, level, band, steps: fixedSteps }: L
   const modes = enoughModes(level.taperModes, pieces, band, memory);
   const plan = plannedSolutions(
     { ...level, taperModes: modes },
-    { tapers, edges: hasEdges(pieces) },
+    { tapers, edges: hasEdges(pieces), pockets: pieces.some((piece) => piece.pockets) },
     { steps, highestWaveNumber: band.high },
   );
   const prepared: Prepared[] = [];

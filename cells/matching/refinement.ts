@@ -53,6 +53,8 @@ const fewerModesShare = 0.7;
 
 /** Power of the number of functions with which the error at edges falls (or faster; test/cells/matching/band-analysis). */
 const edgePower = 5;
+/** The same for pockets of ring-loaded slots, whose fields are plain modes: measured, 5 to 22 of them. */
+const pocketPower = 2;
 
 /**
  * What to solve at one level, the finest first. Extrapolation follows three laws: steps h² (the staircase is symmetric),
@@ -61,13 +63,16 @@ const edgePower = 5;
  */
 export function plannedSolutions(
   { edgeFunctions, taperModes }: Level,
-  has: { tapers: boolean; edges: boolean },
+  has: { tapers: boolean; edges: boolean; pockets: boolean },
   { steps, highestWaveNumber }: { steps: number[]; highestWaveNumber: number },
 ): PlannedSolution[] {
   const finest: Fineness = { edgeFunctions, modeCount: taperModes, sections: steps, highestWaveNumber };
   const halfSteps = steps.map((n) => Math.max(1, n / 2));
   const fewerModes = 2 * Math.round((taperModes * fewerModesShare) / 2);
-  const edgeWeight = 1 / ((edgeFunctions / (edgeFunctions - 2)) ** edgePower - 1);
+  // A pocket has three functions fewer than an edge (chain.ts), and errs the more.
+  const edgeWeight = has.pockets
+    ? 1 / (((edgeFunctions - 3) / (edgeFunctions - 5)) ** pocketPower - 1)
+    : 1 / ((edgeFunctions / (edgeFunctions - 2)) ** edgePower - 1);
   if (!has.tapers) {
     return [
       { role: "finest", fineness: finest, weight: 1 + edgeWeight },
