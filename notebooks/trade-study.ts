@@ -26,6 +26,7 @@ import {
   tradeSheet,
 } from "../cells/figures/index.ts";
 import {
+  analysedHorn,
   type BandPoint,
   breakdownMargin,
   buildSheet,
@@ -38,7 +39,7 @@ import {
   exposureDistances,
   feedRequirement,
   hybridDispersion,
-  matchedOverBand,
+  matchedInDish,
   mouthTerms,
   nearFieldEstimate,
   overBand,
@@ -211,10 +212,14 @@ const asked = {
 };
 export const trade = tradeTable(bands, asked);
 
-const analysed = { ...inBand, count: 41 };
-export const smoothMatched = await background(matchedOverBand, smooth, reflector, analysed);
-export const dualModeMatched = await background(matchedOverBand, dualMode, reflector, analysed);
-export const corrugatedMatched = await background(matchedOverBand, corrugated, reflector, analysed);
+const sweep = { bandLow, bandHigh, count: 41 };
+const smoothAnalysed = await background(analysedHorn, smooth, sweep);
+const dualModeAnalysed = await background(analysedHorn, dualMode, sweep);
+const corrugatedAnalysed = await background(analysedHorn, corrugated, sweep);
+const ofDish = { surfaceError, strutShare };
+export const smoothMatched = matchedInDish(smoothAnalysed, reflector, ofDish);
+export const dualModeMatched = matchedInDish(dualModeAnalysed, reflector, ofDish);
+export const corrugatedMatched = matchedInDish(corrugatedAnalysed, reflector, ofDish);
 const matched = [smoothMatched, dualModeMatched, corrugatedMatched];
 export const matchedTrade = tradeTable(matched, asked);
 
@@ -404,7 +409,10 @@ export const overTheBand = figure(
       quantities: [...standardQuantities({ crossPolarLimitDb: crossPolarLimit }), returnLoss],
     },
   ),
-  { caption: "What moves over the band. The closed form knows no match.", basis: "41 frequencies" },
+  {
+    caption: "What moves over the band. The closed form knows no match.",
+    basis: "41 frequencies, more where something moves fast",
+  },
 );
 
 note`## The same horns by two models

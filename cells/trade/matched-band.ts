@@ -1,7 +1,8 @@
 // One horn in one dish over the band, by mode matching of its actual inner wall.
 
-import type { Candidate } from "../horn/index.ts";
-import { type BandAnalysis, bandAnalysis, type Convergence, type Resonance } from "../matching/index.ts";
+import { requireInteger } from "../check.ts";
+import type { Candidate, RealizableHorn, UnrealizableHorn } from "../horn/index.ts";
+import { type BandAnalysis, type Convergence, createMatcher, type Resonance } from "../matching/index.ts";
 import type { FeedPattern } from "../pattern/feed-pattern.ts";
 import type { ApertureModes } from "../radiation/aperture-modes.ts";
 import { aperturePattern } from "../radiation/aperture-pattern.ts";
@@ -11,12 +12,8 @@ import { type BandResult, fewestFrequencies, type OverBandOptions, overBand, typ
 /** Frequencies over a band by mode matching, where nothing else is asked. */
 export const matchedFrequencies = 41;
 
-export interface MatchedBandOptions extends Omit<OverBandOptions, "patternAt" | "reflectionAt"> {
-  /** wanted error of S11; default 1e-3 */
-  reflectionError?: number;
-  /** wanted error of the mouth's field, dB; default −50 */
-  crossPolarErrorDb?: number;
-}
+/** What the dish and its losses are, for a horn analysed already. */
+export type MatchedInDishOptions = Pick<OverBandOptions, "surfaceError" | "strutShare" | "conductivity">;
 
 /** A band by mode matching. Plain data. */
 export type MatchedBand = SweptMatchedBand | (UnsweptBand & { model: "mode matching" });
@@ -38,44 +35,86 @@ export type SweptMatchedBand = Extract<BandResult, { feasible: true }> & {
   convergence: Convergence;
 };
 
+/** A horn analysed over a band, whatever dish it is for. Plain data. */
+export type AnalysedHorn =
+  | {
+      feasible: true;
+      horn: RealizableHorn;
+      bandLow: number;
+      bandHigh: number;
+      analysis: BandAnalysis;
+      patterns: FeedPattern[];
+    }
+  | { feasible: false; horn: UnrealizableHorn; bandLow: number; bandHigh: number };
+
+export interface AnalysedHornOptions {
+  /** Hz, both ends included */
+  bandLow: number;
+  bandHigh: number;
+  /** equally spaced frequencies, at least 21; default 41; an even number becomes the next odd one, so that band centre is among them */
+  count?: number;
+  /** wanted error of S11; default 1e-3 */
+  reflectionError?: number;
+  /** wanted error of the mouth's field, dB; default −50 */
+  crossPolarErrorDb?: number;
+}
+
+// Couplings and section results of the last few horns: a worker that turns the same horn in another dish has them still. What
+// it keeps changes no digit of what it gives.
+const matcher = createMatcher();
+
 /**
- * As `overBand`, with pattern, match and mode content by mode matching of the horn's profile, at an odd number of frequencies
- * so that the middle one is band centre. Heavy: some hundred milliseconds, for a worker.
- *
- * @param options.count frequencies, at least 21; default 41; an even number becomes the next odd one
- * @throws {RangeError} as `overBand` and `bandAnalysis`
+ * Mode matching of a horn's profile over a band, sampled finer where something moves fast. Heavy: some hundred milliseconds,
+ * for a worker. What depends on the dish follows in `matchedInDish`.
+ * @throws {RangeError} band edges out of order, as `bandAnalysis`
  */
-export function matchedOverBand(
+export function analysedHorn(
   candidate: Candidate,
-  dish: Dish,
-  options: MatchedBandOptions,
+  { bandLow, bandHigh, count = matchedFrequencies, reflectionError, crossPolarErrorDb }: AnalysedHornOptions,
   progress?: (share: number) => void,
-): MatchedBand {
-  const { bandLow, bandHigh, reflectionError, crossPolarErrorDb } = options;
-  const asked = Math.max(options.count ?? matchedFrequencies, fewestFrequencies);
-  const count = asked % 2 === 1 ? asked : asked + 1;
-  const within = { ...options, count };
-  if (!candidate.feasible) return { ...refused(overBand(candidate, dish, within)), model: "mode matching" };
-  const frequencies = Array.from({ length: count }, (_, i) => bandLow + ((bandHigh - bandLow) * i) / (count - 1));
-  const analysis = bandAnalysis(
+): AnalysedHorn {
+  if (!candidate.feasible) return { feasible: false, horn: candidate, bandLow, bandHigh };
+  if (!(bandLow <= bandHigh))
+    throw new RangeError(
+      `analysedHorn: the band's lower edge must not be above its upper edge; got ${bandLow / 1e9} GHz and ${bandHigh / 1e9} GHz`,
+    );
+  const asked = Math.max(requireInteger("analysedHorn: count", count, { min: 1 }), fewestFrequencies);
+  const last = asked % 2 === 1 ? asked - 1 : asked;
+  const spaced = Array.from({ length: last + 1 }, (_, i) =>
+    i === last ? bandHigh : i === last / 2 ? (bandLow + bandHigh) / 2 : bandLow + ((bandHigh - bandLow) * i) / last,
+  );
+  const frequencies = bandLow === bandHigh ? [bandLow] : spaced;
+  const analysis = matcher.band(
     candidate.profile,
-    { frequencies, reflectionError, crossPolarErrorDb },
+    { frequencies, reflectionError, crossPolarErrorDb, sampling: bandLow === bandHigh ? "asked" : "finer" },
     progress && ((share) => progress(0.8 * share)),
   );
   const patterns = analysis.apertureModes.map((modes) => aperturePattern(modes));
-  const band = overBand(candidate, dish, {
+  progress?.(1);
+  return { feasible: true, horn: candidate, bandLow, bandHigh, analysis, patterns };
+}
+
+/**
+ * As `overBand`, with pattern, match and mode content by mode matching: an analysed horn in one dish.
+ * @throws {RangeError} as `overBand`
+ */
+export function matchedInDish(analysed: AnalysedHorn, dish: Dish, options: MatchedInDishOptions = {}): MatchedBand {
+  const { horn, bandLow, bandHigh } = analysed;
+  const within = { ...options, bandLow, bandHigh };
+  if (!analysed.feasible) return { ...refused(overBand(horn, dish, within)), model: "mode matching" };
+  const { analysis, patterns } = analysed;
+  const at = (frequency: number): number => nearest(analysis.frequencies, frequency);
+  const band = overBand(horn, dish, {
     ...within,
-    patternAt: (frequency) => patterns[nearest(analysis.frequencies, frequency)]!,
+    frequencies: analysis.frequencies,
+    patternAt: (frequency) => patterns[at(frequency)]!,
     reflectionAt: (frequency) => {
-      const { re, im } = complexAt(analysis.s11, nearest(analysis.frequencies, frequency));
+      const { re, im } = complexAt(analysis.s11, at(frequency));
       return Math.hypot(re, im);
     },
   });
-  progress?.(1);
   if (!band.feasible) return { ...band, model: "mode matching" };
-  const middle = (count - 1) / 2;
-  // the analysis may have sampled finer where something moves fast
-  const at = frequencies.map((frequency) => nearest(analysis.frequencies, frequency));
+  const middle = at((bandLow + bandHigh) / 2);
   return {
     ...band,
     warnings: [
@@ -83,19 +122,29 @@ export function matchedOverBand(
       ...analysis.warnings.filter(({ text }) => !band.warnings.some((one) => one.text === text)),
     ],
     model: "mode matching",
-    pattern: patterns[at[middle]!]!,
-    modes: analysis.apertureModes[at[middle]!]!,
-    s11: at.map((i) => complexAt(analysis.s11, i)),
-    modeRatio: at.map((i) => ratioOf(analysis.apertureModes[i]!)),
+    pattern: patterns[middle]!,
+    modes: analysis.apertureModes[middle]!,
+    s11: analysis.frequencies.map((_, i) => complexAt(analysis.s11, i)),
+    modeRatio: analysis.apertureModes.map(ratioOf),
     resonances: analysis.resonances,
     powerBalance: Math.max(...analysis.powerBalance.map(Math.abs)),
     convergence: analysis.convergence,
   };
 }
 
+/** Both steps at once. */
+export function matchedOverBand(
+  candidate: Candidate,
+  dish: Dish,
+  options: AnalysedHornOptions & MatchedInDishOptions,
+  progress?: (share: number) => void,
+): MatchedBand {
+  return matchedInDish(analysedHorn(candidate, options, progress), dish, options);
+}
+
 function refused(band: BandResult): UnsweptBand {
   if (!band.feasible) return band;
-  throw new Error("matchedOverBand: a horn that can't be realized was swept");
+  throw new Error("matchedInDish: a horn that can't be realized was swept");
 }
 
 function nearest(frequencies: readonly number[], wanted: number): number {

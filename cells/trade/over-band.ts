@@ -22,6 +22,8 @@ export interface OverBandOptions {
   bandHigh: number;
   /** equally spaced frequencies, ends included; at least 21, which is the default */
   count?: number;
+  /** Hz, ascending, both edges and band centre among them, at least 21: instead of equally spaced ones */
+  frequencies?: readonly number[];
   /** m, rms of the dish; default 0 */
   surfaceError?: number;
   /** share of the aperture that struts shade, 0…1; default 0 */
@@ -115,9 +117,11 @@ export function overBand(candidate: Candidate, dish: Dish, options: OverBandOpti
   const pointAt = (frequency: number, pattern: FeedPattern): BandPoint =>
     bandPoint({ horn: candidate, dish, pattern, feedPositionZ, options, frequency });
   const center = pointAt(bandCenter, centerPattern);
-  const frequencies = Array.from({ length: count }, (_, i) =>
-    i === count - 1 ? bandHigh : bandLow + ((bandHigh - bandLow) * i) / (count - 1),
-  );
+  const frequencies = options.frequencies
+    ? checkedFrequencies(options.frequencies, bandLow, bandHigh)
+    : Array.from({ length: count }, (_, i) =>
+        i === count - 1 ? bandHigh : bandLow + ((bandHigh - bandLow) * i) / (count - 1),
+      );
   const points = frequencies.map((f) => (f === bandCenter ? center : pointAt(f, patternAt(f))));
   return {
     feasible: true,
@@ -130,6 +134,18 @@ export function overBand(candidate: Candidate, dish: Dish, options: OverBandOpti
     center,
     warnings: gatheredWarnings(candidate.warnings, points),
   };
+}
+
+function checkedFrequencies(frequencies: readonly number[], bandLow: number, bandHigh: number): number[] {
+  const sound =
+    frequencies.length >= fewestFrequencies &&
+    frequencies[0] === bandLow &&
+    frequencies.at(-1) === bandHigh &&
+    frequencies.every((f, i) => i === 0 || f > frequencies[i - 1]!);
+  if (sound || (bandLow === bandHigh && frequencies.length > 0)) return [...frequencies];
+  throw new RangeError(
+    `overBand: frequencies must ascend from the band's lower to its upper edge, at least ${fewestFrequencies} of them; got ${frequencies.length}`,
+  );
 }
 
 interface PointInput {
