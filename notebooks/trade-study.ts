@@ -217,9 +217,9 @@ const smoothAnalysed = await background(analysedHorn, smooth, sweep);
 const dualModeAnalysed = await background(analysedHorn, dualMode, sweep);
 const corrugatedAnalysed = await background(analysedHorn, corrugated, sweep);
 const ofDish = { surfaceError, strutShare };
-export const smoothMatched = matchedInDish(smoothAnalysed, reflector, ofDish);
-export const dualModeMatched = matchedInDish(dualModeAnalysed, reflector, ofDish);
-export const corrugatedMatched = matchedInDish(corrugatedAnalysed, reflector, ofDish);
+export const smoothMatched = await background(matchedInDish, smoothAnalysed, reflector, ofDish);
+export const dualModeMatched = await background(matchedInDish, dualModeAnalysed, reflector, ofDish);
+export const corrugatedMatched = await background(matchedInDish, corrugatedAnalysed, reflector, ofDish);
 const matched = [smoothMatched, dualModeMatched, corrugatedMatched];
 export const matchedTrade = tradeTable(matched, asked);
 
