@@ -11,8 +11,8 @@ export interface Side {
   modes: RealMatrix;
   /** where the kernel holds them */
   address: number;
-  /** few of their elements are zero */
-  dense: boolean;
+  /** few of their elements are zero; or they are the unit matrix, the guide's own modes; or else */
+  form: "dense" | "unit" | "sparse";
   /** what the guide's further modes add, for edge functions; with the aperture's radius, m */
   tail?: ModeTail & { radius: number };
 }

@@ -98,24 +98,29 @@ export function createMemory(kernel: Kernel): Memory {
     const behind = pocket ? `${pocket.ring.innerRadius} ${pocket.ring.outerRadius} ${pocket.count}` : "";
     return sides.get(`${kind} ${count} ${radius} ${guide.radius} ${modeCount} ${behind}`, () => {
       const id = nextId++;
-      const placed = (modes: RealMatrix, dense: boolean): Side => ({ id, modes, dense, address: place(modes.values) });
+      const placed = (modes: RealMatrix, form: Side["form"]): Side => ({
+        id,
+        modes,
+        form,
+        address: place(modes.values),
+      });
       const ratio = radius / guide.radius;
       if (pocket) {
         const edges = count - pocket.count;
         const tail = edgeTail(ratio, edges, modeCount, tableOf(modeCount));
         const modes = edgeMatrix(ratio, edges, modeCount);
         const side = withPocket({ modes, tail }, pocket, guide, tableOf(modeCount));
-        return { ...placed(side.modes, false), tail: { ...side.tail, radius } };
+        return { ...placed(side.modes, "sparse"), tail: { ...side.tail, radius } };
       }
       if (kind === "edge") {
         const tail = { ...edgeTail(ratio, count, modeCount, tableOf(modeCount)), radius };
-        return { ...placed(edgeMatrix(ratio, count, modeCount), false), tail };
+        return { ...placed(edgeMatrix(ratio, count, modeCount), "sparse"), tail };
       }
       const counts = { smallCount: count, largeCount: modeCount };
       if (kind === "step" || ratio === 1) {
-        return placed(couplings(ratio, counts, tableOf(Math.max(count, modeCount))), ratio !== 1);
+        return placed(couplings(ratio, counts, tableOf(Math.max(count, modeCount))), ratio === 1 ? "unit" : "dense");
       }
-      return placed(smoothMatrix(-Math.log(ratio), count, modeCount), true);
+      return placed(smoothMatrix(-Math.log(ratio), count, modeCount), "dense");
     });
   }
 

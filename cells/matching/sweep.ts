@@ -14,7 +14,7 @@ import { type Answer, answerAt } from "./outcome.ts";
 import { droppedWithPocket, places, pocketAdmittances } from "./pocket-basis.ts";
 import type { Prepared } from "./prepared.ts";
 import { shortedResonances } from "./resonance-count.ts";
-import { nodePairs, nodeWeights, type WaveBand } from "./section-matrices.ts";
+import { nodePairs, nodeWeights, type SectionMatrices, type WaveBand } from "./section-matrices.ts";
 
 export interface SweepOptions {
   /** a real admittance that the ports hold inside the elimination and not outside: moves its resonances */
@@ -100,25 +100,18 @@ function sweepPair(
     const size = nextCount + inPorts;
     if (far) {
       writeLines(guide, section.explicit);
-      if (section.transfer) {
-        const { columns } = far.modes;
-        kernel.combine(x, size, section.transfer, columns, count, nextCount, nodes, work.weights, 0, 0);
-        // What high modes have just set needs no clearing: only the rows of the ports.
-        memory.fill(0, t / 8 + lanes * nextCount * size, t / 8 + lanes * size * size);
-      } else {
-        memory.fill(0, x / 8, x / 8 + lanes * count * size);
-        memory.fill(0, t / 8, t / 8 + lanes * size * size);
-      }
-      const [p, q] = [near.modes.columns, far.modes.columns];
-      const { explicit } = section;
-      kernel.gram(x, size, near.address, p, count, far.address, q, nextCount, explicit, work.transfer, 1, 0);
-      addSquare(t, size, far, section.right, explicit, nextCount, 0);
+      writeTransfer(near, far, section, nextCount, size);
+      // What high modes set needs no clearing: only the rows of the ports.
+      const clear = section.right ? nextCount : 0;
+      memory.fill(0, t / 8 + lanes * clear * size, t / 8 + lanes * size * size);
+      addSquare(t, size, far, section.right, section.explicit, nextCount, 0);
     } else {
       writeEnd(guide, section.explicit, outPorts);
       memory.fill(0, t / 8, t / 8 + lanes * size * size);
       writePortColumns(size, 0, near.modes, outPorts);
     }
-    addSquare(s, stride, near, section.left, section.explicit, count);
+    if (far?.id === near.id && nextCount === count) kernel.addLower(s, stride, t, size, count);
+    else addSquare(s, stride, near, section.left, section.explicit, count);
     if (a === 0) writePortColumns(size, nextCount, bases[0]!.left.modes, inPorts);
     else carryPorts(nextCount, size);
     addPocket(a);
@@ -169,11 +162,37 @@ function sweepPair(
     count: number,
     add: 0 | 1 = 1,
   ): void {
-    const { address, dense } = side;
+    const { address, form } = side;
     const { columns } = side.modes;
     if (high) kernel.combine(to, stride, high, columns, count, count, nodes, work.weights, 1, add);
-    if (dense) kernel.denseGram(to, stride, address, columns, count, explicit, work.self, scratch);
-    else kernel.gram(to, stride, address, columns, count, address, columns, count, explicit, work.self, 1, 1);
+    if (form === "unit") {
+      for (let p = 0; p < Math.min(count, explicit); p++) {
+        const diagonal = to / 8 + lanes * p * (stride + 1);
+        memory[diagonal]! += memory[work.self / 8 + lanes * p]!;
+        memory[diagonal + 1]! += memory[work.self / 8 + lanes * p + 1]!;
+      }
+    } else if (form === "dense") {
+      kernel.denseGram(to, stride, address, columns, count, explicit, work.self, scratch);
+    } else {
+      kernel.gram(to, stride, address, columns, count, address, columns, count, explicit, work.self, 1, 1);
+    }
+  }
+
+  /** x[p, q] for the next aperture's functions: what a guide carries from one of its apertures to the other. */
+  function writeTransfer(near: Side, far: Side, section: SectionMatrices, nextCount: number, size: number): void {
+    const [p, q] = [near.modes.columns, far.modes.columns];
+    const { explicit } = section;
+    if (!section.transfer && far.form === "unit" && nextCount <= explicit) {
+      kernel.scaled(x, size, near.address, p, count, nextCount, work.transfer, 1);
+      return;
+    }
+    if (!section.transfer && near.form === "unit" && count <= explicit) {
+      kernel.scaled(x, size, far.address, q, count, nextCount, work.transfer, 0);
+      return;
+    }
+    if (section.transfer) kernel.combine(x, size, section.transfer, q, count, nextCount, nodes, work.weights, 0, 0);
+    else memory.fill(0, x / 8, x / 8 + lanes * count * size);
+    kernel.gram(x, size, near.address, p, count, far.address, q, nextCount, explicit, work.transfer, 1, 0);
   }
 
   /** A pocket's modes see its shorted lines behind them. */

@@ -53,6 +53,19 @@ export interface KernelFunctions {
     w: number,
     scratch: number,
   ): void;
+  /** out[p, q] = m[p, q]·w[p], or m[q, p]·w[q] where `transposed` (m without frequency) */
+  scaled(
+    out: number,
+    stride: number,
+    m: number,
+    mStride: number,
+    rows: number,
+    columns: number,
+    w: number,
+    transposed: 0 | 1,
+  ): void;
+  /** out[p, q] += from[p, q], lower half */
+  addLower(out: number, stride: number, from: number, fromStride: number, rows: number): void;
   /**
    * s [P × P] ← its LDLᵀ without pivoting: unit L below the diagonal, 1/D on it. x [P × Q] ← L⁻¹x; t [Q × Q] ← t − xᵀD⁻¹x.
    * What stands above the diagonal of t may be spoilt. scratch [P × Q].

@@ -54,6 +54,26 @@ export function twinFunctions(memory: () => Float64Array): KernelFunctions {
       }
     },
 
+    scaled(out, stride, m, mStride, rows, columns, w, transposed) {
+      const a = memory();
+      for (let p = 0; p < rows; p++) {
+        for (let q = 0; q < columns; q++) {
+          const value = a[m / 8 + (transposed ? q * mStride + p : p * mStride + q)]!;
+          const weight = w / 8 + 2 * (transposed ? q : p);
+          const to = out / 8 + 2 * (p * stride + q);
+          a[to] = value * a[weight]!;
+          a[to + 1] = value * a[weight + 1]!;
+        }
+      }
+    },
+
+    addLower(out, stride, from, fromStride, rows) {
+      const m = memory();
+      for (let p = 0; p < rows; p++) {
+        for (let i = 0; i < 2 * (p + 1); i++) m[out / 8 + 2 * p * stride + i]! += m[from / 8 + 2 * p * fromStride + i]!;
+      }
+    },
+
     eliminate(s, sStride, x, t, scratch, P, Q) {
       const m = memory();
       for (let lane = 0; lane < 2; lane++) {

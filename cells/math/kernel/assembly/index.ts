@@ -116,6 +116,53 @@ export function gram(
   }
 }
 
+/** out[p, q] = m[p, q]·w[p], or m[q, p]·w[q] where `transposed`: `gram` with a unit matrix on one side, set, not added. */
+export function scaled(
+  out: usize,
+  stride: i32,
+  m: usize,
+  mStride: i32,
+  rows: i32,
+  columns: i32,
+  w: usize,
+  transposed: i32,
+): void {
+  for (let p = 0; p < rows; p++) {
+    let to = at(out, p * stride);
+    if (transposed) {
+      let from = m + ((<usize>p) << 3);
+      let weight = w;
+      for (let q = 0; q < columns; q++) {
+        v128.store(to, f64x2.mul(v128.load(weight), v128.load64_splat(from)));
+        to += 16;
+        weight += 16;
+        from += (<usize>mStride) << 3;
+      }
+    } else {
+      const weight = v128.load(at(w, p));
+      let from = m + ((<usize>(p * mStride)) << 3);
+      for (let q = 0; q < columns; q++) {
+        v128.store(to, f64x2.mul(weight, v128.load64_splat(from)));
+        to += 16;
+        from += 8;
+      }
+    }
+  }
+}
+
+/** out[p, q] += from[p, q], lower half: one that both ends of a guide see alike. */
+export function addLower(out: usize, stride: i32, from: usize, fromStride: i32, rows: i32): void {
+  for (let p = 0; p < rows; p++) {
+    let to = at(out, p * stride);
+    let source = at(from, p * fromStride);
+    for (let q = 0; q <= p; q++) {
+      v128.store(to, f64x2.add(v128.load(to), v128.load(source)));
+      to += 16;
+      source += 16;
+    }
+  }
+}
+
 /** The lower half of `gram` with b = a, without passing over zeros: blocks of four by two. scratch [rows × columns]. */
 export function denseGram(
   out: usize,

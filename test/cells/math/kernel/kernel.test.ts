@@ -74,6 +74,17 @@ test("kernel: combine and the grams, WebAssembly against TypeScript", () => {
     expectAlike(both, out, 2 * rows * stride, `gram ${rows}×${columns}`);
     expectAlike(both, wide, 4 * rows * stride, `gram ${rows}×${columns}, two pairs`);
 
+    for (const transposed of [0, 1] as const) {
+      const many = transposed ? columns : rows;
+      const m = place(randoms(many * (rows + columns), 11));
+      const factors = place(randoms(2 * many, 12));
+      for (const kernel of both) kernel.scaled(out, stride, m, rows + columns, rows, columns, factors, transposed);
+      expectAlike(both, out, 2 * rows * stride, `scaled ${rows}×${columns}`, 0);
+    }
+    const further = place(randoms(2 * rows * (rows + 1), 13));
+    for (const kernel of both) kernel.addLower(further, rows + 1, out, stride, Math.min(rows, columns));
+    expectAlike(both, further, 2 * rows * (rows + 1), `addLower ${rows}`, 0);
+
     const square = place(randoms(2 * rows * stride, 9));
     const scratch = place(new Float64Array(18 * rows));
     const before = both[0].memory().slice(square / 8, square / 8 + 2 * rows * stride);
