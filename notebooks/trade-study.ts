@@ -177,7 +177,7 @@ export const transmitPower = given("2 W", {
   max: "20 kW",
   step: "0.5 W",
 });
-export const dishSurface = given.choice(["mattPaint", "glossPaint", "polished"], {
+export const dishSurface = given.choice(["matt paint", "gloss paint", "polished"], {
   label: "Dish surface",
   why: "Painted by the maker.",
 });
@@ -232,10 +232,7 @@ head({
     ["Band", `${show(bandLow, "GHz", 3)} to ${show(bandHigh, "GHz", 3)}`],
     ["Candidates", "smooth cone, dual-mode, corrugated"],
     ["Asked", `cross-polar below ${show(crossPolarLimit, "dB", 0)}, efficiency above ${show(efficiencyLimit, "%", 0)}`],
-    [
-      "Model",
-      `closed form, ${trade.rows.length} horns at ${smoothBand.feasible ? smoothBand.frequencies.length : 21} frequencies`,
-    ],
+    ["Models", "closed form; mode matching at 41 frequencies"],
   ],
 });
 
@@ -547,7 +544,7 @@ listed ${farthest > 0 ? `only beyond ${distanceText(farthest)} in the beam` : "o
 transmitter before anyone enters the beam or reaches between feed and dish, and never look into a horn or guide that may carry power.`;
 
 export const sun = sunFocus(reflector, {
-  surface: dishSurface,
+  surface: ({ "matt paint": "mattPaint", "gloss paint": "glossPaint", polished: "polished" } as const)[dishSurface],
   ...(chosen.feasible ? { feedRadius: chosen.apertureRadius } : {}),
 });
 caution("Sun in the dish")`Pointed at the sun, this dish would gather about ${show(sun.power, "W", 0)} into an image
