@@ -131,7 +131,7 @@ const mostModes = 600;
 function raiseModeCount(guide: Guide, { kind, count }: Aperture, small: number, matched: boolean): void {
   if (kind === "edge") {
     const toOtherEnd = matched ? 0 : (lineReach * guide.radius) / guide.length;
-    const reach = Math.max(((edgeReach + 10 * Math.max(0, count - 9)) * guide.radius) / small, toOtherEnd);
+    const reach = Math.max(((edgeReach + 10 * Math.max(0, count - 11)) * guide.radius) / small, toOtherEnd);
     guide.modeCount = Math.max(guide.modeCount, 2 * Math.ceil(Math.min(reach / Math.PI, mostModes / 2)));
   } else if (kind === "step") {
     guide.modeCount = Math.max(guide.modeCount, Math.round((count * guide.radius) / small));
