@@ -45,7 +45,7 @@ export function exportHtml({ title, firstPaint, style, script, record, notices }
   const live = script === undefined ? undefined : packedScript(script);
   const policy = [
     "default-src 'none'",
-    live === undefined ? "script-src 'none'" : `script-src ${live.texts.map(hashSource).join(" ")}`,
+    live === undefined ? "script-src 'none'" : `script-src ${live.texts.map(hashSource).join(" ")} 'wasm-unsafe-eval'`,
     ["style-src", hashSource(css), ...stylesWithin(firstPaint)].join(" "),
     "img-src data: blob:",
     live === undefined ? "worker-src 'none'" : "worker-src blob:",

@@ -9,7 +9,7 @@ import type { OutgoingHttpHeaders } from "node:http";
 export function pagePolicy(styleHashes: readonly string[] = []): string {
   return [
     "default-src 'none'",
-    "script-src 'self'",
+    "script-src 'self' 'wasm-unsafe-eval'",
     ["style-src 'self'", ...styleHashes].join(" "),
     "img-src 'self' data: blob:",
     "connect-src 'self'",
