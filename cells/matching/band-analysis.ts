@@ -53,7 +53,14 @@ export function analyseBand(
   const pairs = pairCount(options.modePairs, mouth, band.high * mouth.endRadius);
   const attempts: Convergence["attempts"] = [];
   for (const [i, level] of plan.entries()) {
-    const solution = solutionAt({ memory, pieces, level, band, steps: options.taperSteps });
+    const solution = solutionAt({
+      memory,
+      pieces,
+      level,
+      band,
+      steps: options.taperSteps,
+      flange: options.mouthAdmittance === "flange",
+    });
     const { refined, finest } = solution.at(frequencies, (share) => progress?.((i + share) / plan.length));
     const resonances = resonancesOf(solution, frequencies, finest);
     const { reflectionError, apertureError, excess } = judged(frequencies, refined, resonances, wanted);

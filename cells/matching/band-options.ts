@@ -13,6 +13,11 @@ export interface BandOptions {
   crossPolarErrorDb?: number;
   /** TE1n–TM1n pairs to list at the mouth; default those that travel or nearly do, at least 5 */
   modePairs?: number;
+  /**
+   * "flange": the mouth stands in an infinite flat flange and reflects; "none" (default): the guide of the mouth goes on,
+   * matched. The listed modes are those that come to the mouth. Evanescent modes are not coupled from the flange to the last step
+   */
+  mouthAdmittance?: "none" | "flange";
   /** "finer": more frequencies where S11 or the modes at the mouth move fast, and across narrow resonances; default "asked" */
   sampling?: "asked" | "finer";
   /** this fineness and no other, whatever the error; what is left out is as at the first level */
@@ -33,7 +38,10 @@ export function wantedErrors({ reflectionError = 1e-3, crossPolarErrorDb = -50 }
   return { reflection: reflectionError, aperture: 10 ** (crossPolarErrorDb / 20) };
 }
 
-export function plannedLevels({ level, taperSteps: steps }: BandOptions): readonly Level[] {
+export function plannedLevels({ level, taperSteps: steps, mouthAdmittance = "none" }: BandOptions): readonly Level[] {
+  if (mouthAdmittance !== "none" && mouthAdmittance !== "flange") {
+    throw new RangeError(`bandAnalysis: mouthAdmittance must be "none" or "flange"; got ${String(mouthAdmittance)}`);
+  }
   if (steps !== undefined) requireInteger("bandAnalysis: taperSteps", steps, { min: 2, max: 2000 });
   if (steps !== undefined && steps % 2 !== 0) {
     throw new RangeError(`bandAnalysis: taperSteps must be even; got ${steps}`);

@@ -64,6 +64,32 @@ export function edgeCouplings(ratio: number, count: number, modeCount: number, t
 }
 
 /**
+ * Transforms of the functions at one κ, without a guide's factor π·ratio·scale; or, with a tail's sum in place of κ, their
+ * leading term for large κ, as `edgeTail`.
+ */
+export function edgeTransforms(kappa: number, count: number, tailSum?: number): ModeTail {
+  const te = new Float64Array(count);
+  const tm = new Float64Array(count);
+  const functions = edgeFunctions(count);
+  const orders = 2 + 2 * functions.reduce((most, each) => Math.max(most, each.te, each.tm), 0);
+  const bessel = new Float64Array(orders);
+  if (tailSum === undefined) writeBesselThirds(kappa, orders, bessel);
+  const root = Math.cbrt(kappa);
+  const asymptote = (n: number): number => Math.sqrt(tailSum ?? 0) * (n % 2 === 0 ? 1 : -1);
+  functions.forEach((each, p) => {
+    if (each.te >= 0) {
+      te[p] =
+        teScale(each.te) *
+        (tailSum === undefined ? bessel[2 * each.te + 1]! / (root * root * kappa) : asymptote(each.te));
+    }
+    if (each.tm >= 0) {
+      tm[p] = tmScale(each.tm) * (tailSum === undefined ? bessel[2 * each.tm]! / (root * root) : asymptote(each.tm));
+    }
+  });
+  return { te, tm };
+}
+
+/**
  * What the modes beyond `modeCount` add to a sum over admittances: Σ M[p]M[q]·γ/k → te[p]·te[q]/(ka) and
  * Σ M[p]M[q]·k/γ → tm[p]·tm[q]·ka. The leading term of the couplings for large κ, summed as an integral with its oscillating
  * part.

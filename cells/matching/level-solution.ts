@@ -29,9 +29,11 @@ export interface LevelTask {
   band: WaveBand;
   /** steps of every taper instead of the level's rule */
   steps: number | undefined;
+  /** the mouth stands in an infinite flange */
+  flange: boolean;
 }
 
-export function solutionAt({ memory, pieces, level, band, steps: fixedSteps }: LevelTask): LevelSolution {
+export function solutionAt({ memory, pieces, level, band, steps: fixedSteps, flange }: LevelTask): LevelSolution {
   const byRule = taperSteps(pieces, level.stepsPerWavelength, (2 * Math.PI) / band.high);
   const steps = byRule.map((n, p) => (isGuide(pieces[p]!) ? 1 : (fixedSteps ?? n)));
   const tapers = !pieces.every(isGuide);
@@ -58,6 +60,7 @@ export function solutionAt({ memory, pieces, level, band, steps: fixedSteps }: L
       const solved = prepared.map((each, s) =>
         solveBand(each, frequencies, {
           fewer: plan[s]!.fewer,
+          flange,
           progress: (part) => progress?.((s + part) / prepared.length),
         }),
       );
@@ -66,6 +69,7 @@ export function solutionAt({ memory, pieces, level, band, steps: fixedSteps }: L
         const travelling = {
           throat: travellingCount(pieces[0]!.startRadius, k, finest.table),
           mouth: travellingCount(pieces.at(-1)!.endRadius, k, finest.table),
+          reflecting: flange,
         };
         const answers = solved.map((each) => each[f]!);
         return refine(plan, answers, { travelling, steep });

@@ -10,8 +10,8 @@ import { createMemory } from "./memory.ts";
  * Mode matching of a horn: TE11 comes in at the start of the profile, from a guide that continues it, matched; every mode
  * leaves at the mouth into a guide that continues it, matched. Refined by itself to the wanted errors.
  *
- * Valid for a closed, lossless wall of revolution. Left out: reflection at the mouth itself and currents on rim and outer
- * wall; loss; everything of another azimuthal order than TE11's.
+ * Valid for a closed, lossless wall of revolution. Left out: reflection at the mouth itself (unless asked for, by a flange) and
+ * currents on rim and outer wall; loss; everything of another azimuthal order than TE11's.
  *
  * @param progress share done, 0…1
  * @throws {TypeError|RangeError} a profile or option that makes no sense; a frequency at which TE11 doesn't travel in the throat

@@ -5,6 +5,7 @@ import type { Guide } from "./chain.ts";
 import type { RealMatrix } from "./couplings.ts";
 import { guardedGammaSquared, matchedAdmittance } from "./line.ts";
 import { isTE, type ModeTable } from "./mode-table.ts";
+import { flangedMouth, multiplied } from "./mouth-termination.ts";
 import { solvePorts } from "./ports.ts";
 import { negativeEigenvalues } from "./resonance-count.ts";
 // from "./ports.ts";
@@ -46,6 +47,8 @@ interface Eliminated {
   right: RealMatrix;
   table: ModeTable;
   cancellation: number;
+  /** the mouth stands in an infinite flange, not in a guide that goes on */
+  flange: boolean;
   /** negative pivots and resonances of shorted guides */
   shorted: number;
 }
@@ -64,7 +67,14 @@ export function answerAt(from: Eliminated): Answer {
   const loads = Array.from({ length: size }, (_, p) =>
     p < outPorts ? matched(last, p) : matched(first, p - outPorts),
   );
-  const { voltage, current } = solvePorts(impedance, loads, outPorts + incident, portTerm);
+  const mouth = from.flange && outPorts > 0 ? flangedMouth(last, outPorts, k, table) : undefined;
+  const { voltage, current } = solvePorts({
+    impedance,
+    loads,
+    driven: outPorts + incident,
+    inside: portTerm,
+    together: mouth?.admittance,
+  });
   const resonancesBelow = negativeEigenvalues(from.shorted, impedance, loads, portTerm);
   const drive = loads[outPorts + incident]!;
 
@@ -88,13 +98,19 @@ export function answerAt(from: Eliminated): Answer {
   }
   let carried = 0;
   const inward = gammaSquared(first, incident);
+  const atMouth = mouth?.forward({ re: voltage.re.slice(0, outPorts), im: voltage.im.slice(0, outPorts) });
   for (let n = 0; n < last.modeCount; n++) {
     const load = matched(last, n);
+    if (atMouth && n < outPorts) {
+      outgoing.re[n] = atMouth.re[n]!;
+      outgoing.im[n] = atMouth.im[n]!;
+    }
     toWave(outgoing, n, load, drive);
-    if (load.im > 0) carried += outgoing.re[n]! ** 2 + outgoing.im[n]! ** 2;
-    travel(outgoing, n, gammaSquared(last, n), last.length);
+    if (!mouth && load.im > 0) carried += outgoing.re[n]! ** 2 + outgoing.im[n]! ** 2;
+    if (!(atMouth && n < outPorts)) travel(outgoing, n, gammaSquared(last, n), last.length);
     travel(outgoing, n, inward, first.length);
   }
+  if (mouth) carried += radiated(mouth.admittance, voltage, outPorts) / drive.im;
   const reflected = complexVector(inPorts);
   for (let n = 0; n < inPorts; n++) {
     const load = loads[outPorts + n]!;
@@ -106,6 +122,14 @@ export function answerAt(from: Eliminated): Answer {
     travel(reflected, n, gammaSquared(first, n), first.length);
   }
   return { reflected, outgoing, lastField, powerError: 1 - carried, cancellation: from.cancellation, resonancesBelow };
+}
+
+/** Im v*·Y·v: power into jη0·Y. */
+function radiated(admittance: ComplexVector, voltage: ComplexVector, ports: number): number {
+  const current = multiplied(admittance, voltage, ports);
+  let sum = 0;
+  for (let n = 0; n < ports; n++) sum += voltage.re[n]! * current.im[n]! - voltage.im[n]! * current.re[n]!;
+  return sum;
 }
 
 /** A mode's voltage for unit voltage of the wave coming in → its wave amplitude for one of unit amplitude: × √(Z_in/Z). */

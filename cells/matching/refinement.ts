@@ -114,6 +114,8 @@ export interface Refined {
 export interface Travelling {
   throat: number;
   mouth: number;
+  /** the mouth sends some back */
+  reflecting: boolean;
 }
 
 /** Corrections larger than this are no small errors, and following their power law would mislead. */
@@ -199,7 +201,7 @@ function difference(a: Answer, b: Answer, travelling: number): Change {
  * The weighted sum of the solutions, mode by mode; modes that the others lack stay as the finest has them. Then
  * scaled to the power that comes in: extrapolating amplitudes leaves it by the square of the correction.
  */
-function extrapolated(plan: PlannedSolution[], solutions: Answer[], { throat, mouth }: Travelling): Answer {
+function extrapolated(plan: PlannedSolution[], solutions: Answer[], { throat, mouth, reflecting }: Travelling): Answer {
   const finest = solutions[0]!;
   const extend = (pick: (answer: Answer) => ComplexVector): ComplexVector => {
     const whole = pick(finest);
@@ -214,7 +216,8 @@ function extrapolated(plan: PlannedSolution[], solutions: Answer[], { throat, mo
   };
   const reflected = extend((answer) => answer.reflected);
   const outgoing = extend((answer) => answer.outgoing);
-  const scale = 1 / Math.sqrt(power(reflected, throat) + power(outgoing, mouth));
+  // A mouth that reflects carries away less than what comes to it.
+  const scale = reflecting ? 1 : 1 / Math.sqrt(power(reflected, throat) + power(outgoing, mouth));
   for (const { re, im } of [reflected, outgoing]) {
     for (let n = 0; n < re.length; n++) {
       re[n]! *= scale;

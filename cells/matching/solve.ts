@@ -44,6 +44,13 @@ export function bandOf(frequencies: number[]): WaveBand {
   return waveBand(frequencies.map((f) => (2 * Math.PI * f) / speedOfLight));
 }
 
+export interface SolveOptions {
+  /** as `sweep` */
+  fewer?: boolean;
+  flange?: boolean;
+  progress?: (share: number) => void;
+}
+
 /**
  * Answers at the frequencies, in order. The real form loses digits near a resonance of the horn closed by its port terms;
  * the pivots show it, and another term there has none.
@@ -51,13 +58,13 @@ export function bandOf(frequencies: number[]): WaveBand {
 export function solveBand(
   prepared: Prepared,
   frequencies: number[],
-  { fewer = false, progress }: { fewer?: boolean; progress?: (share: number) => void } = {},
+  { fewer = false, flange = false, progress }: SolveOptions = {},
 ): Answer[] {
   const answers: Answer[] = [];
   for (let i = 0; i < frequencies.length; i += portion) {
     const some = frequencies.slice(i, i + portion);
-    sweep(prepared, some, { fewer }).forEach((answer, lane) => {
-      answers.push(isSound(answer) ? answer : soundest(prepared, some[lane]!, { fewer, first: answer }));
+    sweep(prepared, some, { fewer, flange }).forEach((answer, lane) => {
+      answers.push(isSound(answer) ? answer : soundest(prepared, some[lane]!, { fewer, flange, first: answer }));
     });
     progress?.(Math.min(1, (i + portion) / frequencies.length));
   }
@@ -69,10 +76,14 @@ const isSound = ({ powerError, cancellation, outgoing }: Answer): boolean =>
 
 const isFiniteVector = ({ re, im }: ComplexVector): boolean => re.every(Number.isFinite) && im.every(Number.isFinite);
 
-function soundest(prepared: Prepared, frequency: number, { fewer, first }: { fewer: boolean; first: Answer }): Answer {
+function soundest(
+  prepared: Prepared,
+  frequency: number,
+  { fewer, flange, first }: { fewer: boolean; flange: boolean; first: Answer },
+): Answer {
   let best = first;
   for (const term of otherPortTerms) {
-    const [again] = sweep(prepared, [frequency], { portTerm: term, fewer });
+    const [again] = sweep(prepared, [frequency], { portTerm: term, fewer, flange });
     if (isSound(again!)) return again!;
     if (!(best.cancellation <= again!.cancellation)) best = again!;
   }

@@ -21,6 +21,8 @@ export interface SweepOptions {
   portTerm?: number;
   /** two functions fewer at every edge, fewer modes at shallow steps; default no */
   fewer?: boolean;
+  /** the mouth stands in an infinite flange; default no: its guide goes on, matched */
+  flange?: boolean;
   /** index of the mode that comes in, one that travels in the throat; default 0, TE11 */
   incident?: number;
 }
@@ -60,7 +62,7 @@ const lanes = 2;
 function sweepPair(
   prepared: Prepared,
   frequencies: number[],
-  { portTerm = defaultPortTerm, incident = 0, fewer = false }: SweepOptions,
+  { portTerm = defaultPortTerm, incident = 0, fewer = false, flange = false }: SweepOptions,
 ): Answer[] {
   const { chain, bases, sections, band, table, kernel, work } = prepared;
   const { guides } = chain;
@@ -139,6 +141,7 @@ function sweepPair(
           right: near.modes,
           table,
           cancellation: cancellation[lane]!,
+          flange,
           shorted: negativePivots[lane]! + shortedResonances(chain, k, table),
         }),
       );
