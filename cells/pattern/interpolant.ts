@@ -22,7 +22,18 @@ export interface PatternInterpolant {
  * @throws {RangeError} not a pattern
  */
 export function patternInterpolant(pattern: FeedPattern): PatternInterpolant {
+  const known = splined.get(pattern);
+  if (known) return known;
   requirePattern("patternInterpolant", pattern);
+  const made = splines(pattern);
+  splined.set(pattern, made);
+  return made;
+}
+
+// A pattern is read by many integrals, and never written to: its splines are made once. Forgotten with the pattern.
+const splined = new WeakMap<FeedPattern, PatternInterpolant>();
+
+function splines(pattern: FeedPattern): PatternInterpolant {
   const { theta } = pattern;
   const cut = (samples: ComplexVector) => {
     const re = cubicSpline(theta, samples.re);

@@ -5,7 +5,7 @@ import { speedOfLight } from "../constants.ts";
 import type { Complex, ComplexVector } from "../math/complex.ts";
 import { gaussLegendre } from "../math/quadrature.ts";
 import type { FeedPattern } from "./feed-pattern.ts";
-import { patternInterpolant } from "./interpolant.ts";
+import { type PatternInterpolant, patternInterpolant } from "./interpolant.ts";
 import { requirePattern } from "./theta-grid.ts";
 
 /** Best-fit phase center over a cone; z in m from the centre of the aperture, > 0 out of the horn (normally < 0: inside). */
@@ -135,4 +135,25 @@ export function movedPhaseOrigin(pattern: FeedPattern, z: number): FeedPattern {
     im: re.map((x, i) => x * Math.sin(angle[i]!) + im[i]! * Math.cos(angle[i]!)),
   });
   return { ...pattern, ePlane: turned(pattern.ePlane), hPlane: turned(pattern.hPlane), phaseOriginZ: z };
+}
+
+/** The interpolant of `movedPhaseOrigin`, without its samples: the phase is turned where it is read. @throws {RangeError} likewise */
+export function movedInterpolant(pattern: FeedPattern, z: number): PatternInterpolant {
+  requireNumber("movedInterpolant: z", z, { unit: "m" });
+  const still = patternInterpolant(pattern);
+  const shift = (-2 * Math.PI * pattern.frequency * (z - pattern.phaseOriginZ)) / speedOfLight;
+  const turned =
+    (cut: (theta: number) => Complex) =>
+    (theta: number): Complex => {
+      const { re, im } = cut(theta);
+      const angle = shift * Math.cos(theta);
+      const [c, s] = [Math.cos(angle), Math.sin(angle)];
+      return { re: re * c - im * s, im: re * s + im * c };
+    };
+  return {
+    ePlane: turned(still.ePlane),
+    hPlane: turned(still.hPlane),
+    copolar45: turned(still.copolar45),
+    crossPolar45: turned(still.crossPolar45),
+  };
 }

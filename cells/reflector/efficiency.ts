@@ -3,8 +3,8 @@
 import { requireNumber, requirePositive, type Warning } from "../check.ts";
 import { speedOfLight } from "../constants.ts";
 import type { FeedPattern } from "../pattern/feed-pattern.ts";
-import { type PatternInterpolant, patternInterpolant } from "../pattern/interpolant.ts";
-import { movedPhaseOrigin } from "../pattern/phase-center.ts";
+import type { PatternInterpolant } from "../pattern/interpolant.ts";
+import { movedInterpolant } from "../pattern/phase-center.ts";
 import { radiatedPower } from "../pattern/power.ts";
 import { powerToDb, toMm } from "../units.ts";
 import { angleToRadius, type Dish, uniformGainDbi } from "./dish.ts";
@@ -101,7 +101,7 @@ export function dishEfficiency(pattern: FeedPattern, dish: Dish, options: DishEf
       ? phaseCenterOverDish(pattern, dish).z
       : requireNumber(`${where} phase centre`, options.phaseCenter, { unit: "m" });
 
-  const atFocus = patternInterpolant(movedPhaseOrigin(pattern, feedPositionZ));
+  const atFocus = movedInterpolant(pattern, feedPositionZ);
   const nodeCount = nodesFor(pattern, dish);
   const sums = integrals(illuminationOf(atFocus, dish.halfAngle, nodeCount));
   // The total comes from another rule than the share; for a feed with no spillover to speak of, rounding may order them wrongly.

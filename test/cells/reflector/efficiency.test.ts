@@ -102,8 +102,8 @@ describe("dishEfficiency: the other factors", () => {
     const one = dishEfficiency(feed, atAngle(45), { phaseCenter: 0.004 });
     const other = dishEfficiency(moved, atAngle(45), { phaseCenter: 0.004 });
     assertClose(other.apertureEfficiency, one.apertureEfficiency, {
-      rel: 1e-9,
-      because: "only the reference of the phases moved",
+      rel: 2e-8,
+      because: "the same field splined under two phase ramps; 2e-7 is what the sum claims",
     });
   });
 
