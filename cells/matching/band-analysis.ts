@@ -62,7 +62,7 @@ export function analyseBand(
       flange: options.mouthAdmittance === "flange",
     });
     const { refined, finest } = solution.at(frequencies, (share) => progress?.((i + share) / plan.length));
-    const resonances = resonancesOf(solution, frequencies, finest);
+    const { found: resonances, unsearched } = resonancesOf(solution, frequencies, finest);
     const { reflectionError, apertureError, excess } = judged(frequencies, refined, resonances, wanted);
     attempts.push({ level, reflectionError, apertureError });
     const reached = excess <= 1;
@@ -74,7 +74,7 @@ export function analyseBand(
     memory.endCall();
     progress?.(1);
     const convergence = convergenceOf(solution, sampled.refined, { reflectionError, apertureError, attempts, reached });
-    return assembled({ ...sampled, mouth, pairs, convergence, resonances });
+    return assembled({ ...sampled, mouth, pairs, convergence, resonances, unsearched });
   }
   throw new Error("bandAnalysis: there is no level of fineness to try");
 }
@@ -82,7 +82,7 @@ export function analyseBand(
 /** A further level lowers the error about threefold; it is not tried when that can't suffice. */
 const likelyGain = 6;
 
-function resonancesOf(solution: LevelSolution, frequencies: number[], finest: Answer[]): Resonance[] {
+function resonancesOf(solution: LevelSolution, frequencies: number[], finest: Answer[]) {
   const order = frequencies.map((_, i) => i).sort((a, b) => frequencies[a]! - frequencies[b]!);
   return narrowResonances(
     solution.finest,
@@ -142,9 +142,10 @@ interface Parts {
   pairs: number;
   convergence: Convergence;
   resonances: Resonance[];
+  unsearched: number;
 }
 
-function assembled({ frequencies, refined, mouth, pairs, convergence, resonances }: Parts): BandAnalysis {
+function assembled({ frequencies, refined, mouth, pairs, convergence, resonances, unsearched }: Parts): BandAnalysis {
   const s11 = complexVector(frequencies.length);
   const apertureModes = refined.map(({ answer: { reflected, outgoing } }, f): ApertureModes => {
     s11.re[f] = reflected.re[0]!;
@@ -158,6 +159,7 @@ function assembled({ frequencies, refined, mouth, pairs, convergence, resonances
     powerBalance,
     convergence,
     resonances,
+    unsearched,
     mouthRadius: mouth.endRadius,
   });
   return { frequencies, s11, apertureModes, powerBalance, convergence, resonances, warnings };

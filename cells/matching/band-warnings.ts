@@ -13,10 +13,19 @@ interface Doubts {
   powerBalance: number[];
   convergence: Convergence;
   resonances: Resonance[];
+  /** intervals between frequencies in which narrow resonances were not looked for */
+  unsearched: number;
   mouthRadius: number;
 }
 
-export function bandWarnings({ frequencies, powerBalance, convergence, resonances, mouthRadius }: Doubts): Warning[] {
+export function bandWarnings({
+  frequencies,
+  powerBalance,
+  convergence,
+  resonances,
+  unsearched,
+  mouthRadius,
+}: Doubts): Warning[] {
   const warnings: Warning[] = [];
   const inGHz = (frequency: number): string => (frequency / 1e9).toPrecision(6);
   if (!convergence.reached) {
@@ -33,6 +42,12 @@ export function bandWarnings({ frequencies, powerBalance, convergence, resonance
     warnings.push({
       code: "singular",
       text: `The horn traps ${names.length === 1 ? "a narrow resonance" : `${names.length} narrow resonances`} between the frequencies asked for: ${names.join(", ")}. Match and pattern are spoilt there; corrugations do this at the low edge of their band. Raise the lowest frequency or change the depths of the first slots; sample finer there to confirm.`,
+    });
+  }
+  if (unsearched > 0) {
+    warnings.push({
+      code: "outside-validated-range",
+      text: `The frequencies lie so far apart that in ${unsearched === 1 ? "one gap" : `${unsearched} gaps`} between them narrow resonances were not looked for; ask for more frequencies to have them found.`,
     });
   }
   const lost = powerBalance.reduce(

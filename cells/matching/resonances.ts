@@ -30,6 +30,8 @@ const lastResolution = 1e-10;
 /** What spreads over more than this share of the samples' distance is for the samples to show. */
 const widestShare = 1 / 4;
 
+/** Between samples so far apart that they step over more, wide or narrow, none is looked for. */
+const mostPassed = 8;
 /** A resonance that moves no amplitude by more is not worth a name. */
 const leastSwing = 2e-3;
 /** Modes at the mouth that are looked at. */
@@ -43,9 +45,18 @@ const watchedModes = 6;
  * @accuracy centre to the width, which is within a factor of two; those of the corrugated horn near 8.5 GHz, test/cells/matching
  * @source   Wittrick & Williams 1971 for the count; the rest by definition of a Lorentzian line
  */
-export function narrowResonances(prepared: Prepared, frequencies: number[], answers: Answer[]): Resonance[] {
+export function narrowResonances(
+  prepared: Prepared,
+  frequencies: number[],
+  answers: Answer[],
+): { found: Resonance[]; unsearched: number } {
+  let unsearched = 0;
   const given = frequencies.map((frequency, i): Sample => ({ frequency, below: answers[i]!.resonancesBelow }));
-  return given.slice(1).flatMap((high, i) => {
+  const found = given.slice(1).flatMap((high, i) => {
+    if (passedMost(given[i]!, high) > mostPassed) {
+      unsearched++;
+      return [];
+    }
     const ends = [given[i]!, ...aroundCutoffs(prepared, given[i]!.frequency, high.frequency), high];
     return ends.flatMap((to, e) => {
       // Every second gap is the nothing at a cutoff itself.
@@ -55,7 +66,12 @@ export function narrowResonances(prepared: Prepared, frequencies: number[], answ
       return passed < portReactances.length ? [] : resonancesBetween(prepared, from, to);
     });
   });
+  return { found, unsearched };
 }
+
+/** Resonances between two samples for the reactance that has most there. */
+const passedMost = (low: Sample, high: Sample): number =>
+  Math.max(...high.below.map((count, reactance) => count - low.below[reactance]!));
 
 /** Samples just below and above every cutoff of a port between two frequencies: what closes the port changes there. */
 function aroundCutoffs(prepared: Prepared, low: number, high: number): Sample[] {
