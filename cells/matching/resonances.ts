@@ -26,12 +26,12 @@ interface Sample {
 const parts = 8;
 /** Resolution at first, as a share of the samples' distance; and at last, as a share of the frequency. */
 const firstResolution = 1 / 64;
-const lastResolution = 1e-10;
+const lastResolution = 1e-8;
 /** What spreads over more than this share of the samples' distance is for the samples to show. */
 const widestShare = 1 / 4;
 
 /** Between samples so far apart that they step over more, wide or narrow, none is looked for. */
-const mostPassed = 8;
+const mostPassed = 4;
 /** A resonance that moves no amplitude by more is not worth a name. */
 const leastSwing = 2e-3;
 /** Modes at the mouth that are looked at. */
