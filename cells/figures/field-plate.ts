@@ -86,7 +86,7 @@ export function strengthAtWall(field: ApertureField): { ePlane: number; hPlane: 
 }
 
 // Cells across a plate for the level lines: fine enough for a smooth outline, light enough to redraw at every turn.
-const cells = 24;
+const cells = 20;
 const levels = [0.1, 0.2, 0.3, 0.4, 0.5, 0.6, 0.7, 0.8, 0.9];
 
 /** Units of a plate's own coordinates in a px: whole numbers in quarters keep the drawing small. */
