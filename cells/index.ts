@@ -33,6 +33,8 @@ export {
 export * from "./horn/custom/own-band.ts";
 export { readProfile } from "./horn/custom/read-profile.ts";
 export * from "./horn/index.ts";
+export { type MeasuredPattern, readPatternCuts } from "./horn/measured/pattern-cuts.ts";
+export { type MeasuredMatch, readTouchstone } from "./horn/measured/touchstone.ts";
 // Workshop: what it takes to build one of them, or an own profile.
 export {
   type BuildableHorn,
@@ -84,6 +86,7 @@ export {
 } from "./reflector/sun-focus.ts";
 // Trade: every candidate over the band, side by side, judged.
 export * from "./trade/matched-band.ts";
+export * from "./trade/measured-performance.ts";
 export * from "./trade/over-band.ts";
 export * from "./trade/trade-table.ts";
 export * from "./trade/verdict.ts";
