@@ -11,6 +11,7 @@ import { corrugatedMouth, corrugatedPattern } from "./corrugated/model.ts";
 import { dualModeHorn } from "./dual-mode/dimension.ts";
 import type { DualModeGeometry } from "./dual-mode/geometry.ts";
 import { dualModeAttenuation, dualModeMouth, dualModePattern } from "./dual-mode/model.ts";
+import { tuneDualMode } from "./dual-mode/tune.ts";
 import type { FeedKind } from "./horn-profile.ts";
 import { type HornKind, thetaCountFor } from "./kind.ts";
 import type { MouthTerm } from "./mouth-field.ts";
@@ -23,7 +24,7 @@ export type { Candidate, Dimension, RealizableHorn, UnrealizableHorn } from "./c
 export type { FeedKind, HornProfile } from "./horn-profile.ts";
 export type { MouthTerm } from "./mouth-field.ts";
 export { type FeedRequirement, type HornLimits, largestPhaseError } from "./requirement.ts";
-export { corrugatedHorn, dualModeHorn, smoothHorn };
+export { corrugatedHorn, dualModeHorn, smoothHorn, tuneDualMode };
 
 /** Kinds that are dimensioned and modelled here. */
 export type DimensionedKind = "smooth" | "dualMode" | "corrugated";

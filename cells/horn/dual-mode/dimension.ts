@@ -156,14 +156,24 @@ function withStep(
   return { geometry: phased({ flare, inputRadius, modeRatio, wall: limits.wall }, bandCenter), planeDifferenceDb };
 }
 
+/** Radii that the guide before a step may have, m: TE11 travels over the band, TM11 doesn't, and there is a step to speak of. */
+export function inputBounds(
+  stepRadius: number,
+  { bandLow, bandHigh }: Pick<FeedRequirement, "bandLow" | "bandHigh">,
+): { narrowest: number; widest: number } {
+  return {
+    narrowest: Math.max(cutoffFactor.throat * cutoffRadius(TE11, bandLow), leastStep * stepRadius),
+    widest: Math.min(cutOffMargin * cutoffRadius(TM11, bandHigh), largestStep * stepRadius),
+  };
+}
+
 /** Radius before the step that launches the wanted ratio at band centre, or why there is none. */
 function inputForRatio(
   stepRadius: number,
   modeRatio: number,
   { bandLow, bandCenter, bandHigh }: FeedRequirement,
 ): number | UnrealizableHorn {
-  const narrowest = Math.max(cutoffFactor.throat * cutoffRadius(TE11, bandLow), leastStep * stepRadius);
-  const widest = Math.min(cutOffMargin * cutoffRadius(TM11, bandHigh), largestStep * stepRadius);
+  const { narrowest, widest } = inputBounds(stepRadius, { bandLow, bandHigh });
   const ratioOf = (radius: number): number => stepLaunch(stepCoupling(radius, stepRadius), bandCenter).ratio;
   const most = narrowest < widest ? ratioOf(narrowest) : 0;
   const least = narrowest < widest ? ratioOf(widest) : 0;
