@@ -37,6 +37,10 @@ export const points = given("41", {
   max: 2001,
   step: 1,
 });
+export const mouth = given.choice(["left out", "infinite flange"], {
+  label: "Reflection of the mouth itself",
+  why: "A mouth of a wavelength or more reflects little; a flange is the one case with a published admittance.",
+});
 export const halfAngle = given("35 deg", {
   label: "Half-angle to the rim",
   why: "Where the dish ends, for the figure only.",
@@ -45,7 +49,10 @@ export const halfAngle = given("35 deg", {
 });
 
 export const wall = readProfile(profile);
-export const analysis = await background(ownBand, wall, { bandLow, bandHigh, points });
+export const analysis = await background(ownBand, wall, {
+  ...{ bandLow, bandHigh, points },
+  mouth: mouth === "left out" ? "none" : "flange",
+});
 export const {
   frequencyHz,
   s11,
@@ -132,6 +139,10 @@ margin(overTheBand, {
   mark: "reading",
 })`Estimated error of S11 ${show(convergence.reflectionError, "", 5)}, of the field at the mouth
 ${show(convergence.crossPolarErrorDb, "dB", 0)}: ${convergence.rule} Power is in balance to ${balance < 1e-9 ? "better than 10⁻⁹" : show(balance)}.`;
+margin(overTheBand, {
+  mark: "modelsDiffer",
+})`With the mouth's own reflection, as of an infinite flange, the return loss at band centre is
+${show(analysis.mouthEffect.flangeDb, "dB", 1)}; without it ${show(analysis.mouthEffect.noneDb, "dB", 1)}.`;
 margin(overTheBand, { mark: "warning" })`${markdown(analysis.warnings.map(({ text }) => text).join("\n\n"))}`;
 
 note`## Pattern at band centre`;

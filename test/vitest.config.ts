@@ -3,7 +3,6 @@ import { defineConfig } from "vitest/config";
 export default defineConfig({
   test: {
     include: ["test/**/*.test.ts"],
-    exclude: ["**/node_modules/**", ...(process.env.HORNBOOK_SLOW ? [] : ["test/**/*.slow.test.ts"])],
     testTimeout: 60_000,
     hookTimeout: 120_000,
     maxWorkers: 2,

@@ -18,6 +18,8 @@ export interface OwnBandOptions {
   bandHigh: number;
   /** equally spaced frequencies, ends included; at least 2 */
   points: number;
+  /** the mouth's own reflection: left out, or as of an infinite flange; default left out */
+  mouth?: "none" | "flange";
 }
 
 /** Plain data. Lists are [frequencyCount] where nothing else is said. */
@@ -43,6 +45,8 @@ export interface OwnBand {
   /** the pattern at band centre, as levels and as fields */
   pattern: CutLevels;
   centerPattern: FeedPattern;
+  /** return loss at band centre without and with the mouth's own reflection, dB */
+  mouthEffect: { noneDb: number; flangeDb: number };
   convergence: Convergence;
   /** too narrow to be seen at the frequencies asked for */
   resonances: Resonance[];
@@ -61,7 +65,7 @@ const beam = Math.PI / 6;
  */
 export function ownBand(
   profile: HornProfile,
-  { bandLow, bandHigh, points }: OwnBandOptions,
+  { bandLow, bandHigh, points, mouth = "none" }: OwnBandOptions,
   progress?: (share: number) => void,
 ): OwnBand {
   requirePositive("ownBand: band, lower edge", bandLow, "Hz");
@@ -76,7 +80,7 @@ export function ownBand(
   );
   const analysis = bandAnalysis(
     profile,
-    { frequencies, sampling: "finer" },
+    { frequencies, sampling: "finer", mouthAdmittance: mouth },
     progress && ((share) => progress(0.85 * share)),
   );
   const patterns = analysis.apertureModes.map((modes) => aperturePattern(modes));
@@ -84,6 +88,10 @@ export function ownBand(
   const middle = analysis.frequencies.findIndex((f) => Math.abs(f - center) <= 1e-12 * center);
   const centerPattern =
     patterns[middle] ?? aperturePattern(bandAnalysis(profile, { frequencies: [center] }).apertureModes[0]!);
+  const returned = (mouthAdmittance: "none" | "flange"): number => {
+    const { s11 } = bandAnalysis(profile, { frequencies: [center], mouthAdmittance });
+    return Math.min(largestReturnLossDb, -fieldToDb(Math.hypot(s11.re[0]!, s11.im[0]!)));
+  };
   progress?.(1);
   const s11 = pairs(analysis.s11);
   return {
@@ -103,6 +111,7 @@ export function ownBand(
     powerBalance: analysis.powerBalance,
     pattern: cutLevels(centerPattern),
     centerPattern,
+    mouthEffect: { noneDb: returned("none"), flangeDb: returned("flange") },
     convergence: analysis.convergence,
     resonances: analysis.resonances,
     warnings: analysis.warnings,
