@@ -98,6 +98,32 @@ test("trade study's export: turned givens give the numbers of `values`, to 1e-12
   await close();
 });
 
+test("trade study's export: its policy lets WebAssembly run, in the page and in its workers, and nothing else", async () => {
+  const { page, complaints, close } = await openFile(browser, live, { scripts: true });
+  // the smallest module: magic number and version
+  const runs = await page.evaluate(async () => {
+    const bytes = [0, 97, 115, 109, 1, 0, 0, 0];
+    const here = new WebAssembly.Module(new Uint8Array(bytes)) instanceof WebAssembly.Module;
+    const code = `postMessage(new WebAssembly.Module(new Uint8Array([${bytes}])) instanceof WebAssembly.Module)`;
+    const worker = new Worker(URL.createObjectURL(new Blob([code], { type: "text/javascript" })));
+    const there = await new Promise((resolve) => {
+      worker.onmessage = ({ data }) => resolve(data);
+      worker.onerror = ({ message }) => resolve(message);
+    });
+    worker.terminate();
+    let text: string;
+    try {
+      text = String(Function("return 1")());
+    } catch (error) {
+      text = (error as Error).name;
+    }
+    return { here, there, text };
+  });
+  expect(runs).toEqual({ here: true, there: true, text: "EvalError" });
+  expect(complaints.filter((complaint) => !/unsafe-eval/.test(complaint))).toEqual([]);
+  await close();
+});
+
 test.each([1440, 390])(
   "trade study's export at %i px: no serious finding of axe-core, nothing wider than the page",
   async (width) => {
