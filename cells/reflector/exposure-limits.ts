@@ -31,7 +31,7 @@ const minutes = 60;
  *
  * @param frequency Hz, 0.4…300 GHz
  * @throws {RangeError} frequency out of range
- * @source ICNIRP, Health Phys. 118(5), 483–524, 2020, tables 5 and 6 (secondary transcription; up to 2 GHz from memory);
+ * @source ICNIRP, Health Phys. 118(5), 483–524, 2020, tables 5 and 6 (secondary copy; up to 2 GHz from memory);
  *   47 CFR 1.1310, table 1 (below 1.5 GHz from memory)
  */
 export function exposureLimits(frequency: number): ExposureLimit[] {

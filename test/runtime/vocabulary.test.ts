@@ -1,3 +1,5 @@
+// Every word of the vocabulary with what it takes and refuses. Long, because they are many.
+
 import fc from "fast-check";
 import { marked } from "marked";
 import { describe, expect, test } from "vitest";

@@ -13,7 +13,7 @@ describe("reference levels", () => {
   const local = { standard: "ICNIRP", over: "local" };
 
   test("ICNIRP 2020: whole body and local", () => {
-    // Health Phys. 118:483–524, tables 5 and 6 (secondary transcription): 10/50 W/m²; >2–6 GHz 40/200; >6–<300 GHz
+    // Health Phys. 118:483–524, tables 5 and 6 (secondary copy): 10/50 W/m²; >2–6 GHz 40/200; >6–<300 GHz
     // 55/275 f^−0.177, 36.59/182.95 at 10 GHz; 20/100 at 300 GHz.
     expect(of(10e9, { ...whole, who: "public" })).toBe(10);
     expect(of(10e9, { ...whole, who: "occupational" })).toBe(50);

@@ -1,3 +1,5 @@
+// The running study, state by state. Long, because every way into a state is one test.
+
 import { describe, expect, test } from "vitest";
 import { createStudy } from "../../../runtime/engine.ts";
 import type { CellState, NotebookModule, Study } from "../../../runtime/study.ts";

@@ -1,4 +1,4 @@
-// What the page writes into a notebook's file: as little as needed, in the words a person would have written, or nothing.
+// What the page writes into a notebook's file: as little as needed, in the words a person would have written, or nothing. One file: the rules are the same for all writes.
 
 import { readFileSync } from "node:fs";
 import { join } from "node:path";
