@@ -122,11 +122,13 @@ its wall says ${show(amplitude, "%", 1)}.`;
 
 note`## Pattern`;
 
+// beyond the last measured angle nothing is known, so nothing is compared
+const seen = Math.min(Math.PI / 2, (measured.thetaMaxDeg * Math.PI) / 180);
 export const pattern = figure(
   comparison(
     { model: "mode matching", pattern: there.centerPattern },
     { model: "measured", pattern: measured.pattern },
-    { label: "The horn", kind: "measured", halfAngle: reflector.halfAngle, style: "measured" },
+    { label: "The horn", kind: "measured", halfAngle: reflector.halfAngle, style: "measured", thetaMax: seen },
   ),
   {
     caption: "Both cuts, model and measurement, with their difference beneath.",

@@ -64,13 +64,20 @@ export function measuredPerformance(
     halfPowerBeamwidthDeg: toDeg(beamwidth(pattern, halfPowerDb, "D")),
     crossPolarPeakDb: within.length > 0 ? Math.max(...within) : hasPhase ? crossPolarPeak(pattern) : null,
     phaseCenterM: center,
-    unknown: hasPhase
-      ? []
-      : [
-          "Without phases nobody knows the phase efficiency: the aperture efficiency is at most spillover times illumination.",
-          "Without phases the phase centre is unknown, and with it where the horn has to stand.",
-          ...(cross45 ? [] : ["Without phases and without a 45° cut the cross-polar field is unknown."]),
-        ],
+    unknown: [
+      ...(thetaMaxDeg < 180
+        ? [
+            `Power beyond ${thetaMaxDeg}° was not measured: the spillover efficiency, and what is multiplied with it, is an upper bound.`,
+          ]
+        : []),
+      ...(hasPhase
+        ? []
+        : [
+            "Without phases nobody knows the phase efficiency: the aperture efficiency is at most spillover times illumination.",
+            "Without phases the phase centre is unknown, and with it where the horn has to stand.",
+            ...(cross45 ? [] : ["Without phases and without a 45° cut the cross-polar field is unknown."]),
+          ]),
+    ],
     warnings: [...measured.warnings, ...sums.warnings],
   };
 }

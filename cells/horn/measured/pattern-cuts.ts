@@ -43,12 +43,15 @@ export function readPatternCuts(text: string, frequency: number | undefined, fil
     ? numberColumn(table, "frequency_ghz").map((value) => value * 1e9)
     : table.rows.map(() => frequency ?? Number.NaN);
   if (table.rows.length === 0) throw new CsvError(file, 2, "", "rows of angles are expected; got none");
-  if (frequencies.some((f) => !(f > 0)))
+  if (frequencies.some((f) => !(f > 0 && Number.isFinite(f))))
     throw new CsvError(file, 1, "frequency_ghz", "a frequency above 0 is expected for every row");
-  return [...new Set(frequencies)].map((f) => {
-    const rows = table.rows.filter((_, i) => frequencies[i] === f);
-    return onePattern({ ...table, rows }, f);
+  const sets = new Map<number, CsvTable["rows"]>();
+  table.rows.forEach((row, i) => {
+    const set = sets.get(frequencies[i]!);
+    if (set) set.push(row);
+    else sets.set(frequencies[i]!, [row]);
   });
+  return [...sets].map(([f, rows]) => onePattern({ ...table, rows }, f));
 }
 
 interface Sample {
@@ -60,12 +63,17 @@ interface Sample {
 function onePattern(table: CsvTable, frequency: number): MeasuredPattern {
   const { file, rows } = table;
   const theta = numberColumn(table, "theta_deg");
-  const hasPhase = table.columns.includes("e_phase_deg") && table.columns.includes("h_phase_deg");
+  const phases = ["e_phase_deg", "h_phase_deg"].filter((name) => table.columns.includes(name));
+  if (phases.length === 1)
+    throw new CsvError(file, 1, phases[0]!, "the phase of both cuts is expected, or of neither; this one stands alone");
+  const hasPhase = phases.length === 2;
+  const seen = new Set<number>();
   theta.forEach((angle, i) => {
     if (Math.abs(angle) > 180)
       throw new CsvError(file, rows[i]!.line, "theta_deg", `an angle from −180 to 180 is expected; got ${angle}`);
-    if (theta.indexOf(angle) !== i)
+    if (seen.has(angle))
       throw new CsvError(file, rows[i]!.line, "theta_deg", `each angle is expected once; ${angle} stands twice`);
+    seen.add(angle);
   });
   const boresight = theta.indexOf(0);
   if (boresight < 0) throw new CsvError(file, rows[0]!.line, "theta_deg", "a row at 0, boresight, is expected");
@@ -83,6 +91,7 @@ function onePattern(table: CsvTable, frequency: number): MeasuredPattern {
   const thetaMaxDeg = Math.max(...halves[0]!.map((side) => side.at(-1)!.theta));
   const grid = Float64Array.from({ length: thetaCount }, (_, i) => (Math.PI * i) / (thetaCount - 1));
   const [e, h] = halves.map((sides) => averaged(sides, grid, thetaMaxDeg, hasPhase)) as [ComplexVector, ComplexVector];
+  const copolar = numberColumn(table, "e_db")[boresight]!;
   const cross = table.columns.includes("cross45_db") ? levelColumn(table, "cross45_db") : null;
   const pattern: FeedPattern = { frequency, theta: grid, ePlane: e, hPlane: h, phaseOriginZ: 0, warnings: [] };
   return {
@@ -92,7 +101,7 @@ function onePattern(table: CsvTable, frequency: number): MeasuredPattern {
     cross45: cross && {
       thetaDeg: theta.map(Math.abs),
       // against boresight copolar, which the E-plane cut shares
-      levelDb: cross.map((level) => level - numberColumn(table, "e_db")[boresight]!),
+      levelDb: cross.map((level) => level - copolar),
     },
     thetaMaxDeg,
     asymmetryDb: asymmetry(halves, grid),

@@ -59,6 +59,7 @@ export function readTouchstone(text: string, file = "match"): MeasuredMatch {
     if (content === "") return;
     if (ended) throw new TouchstoneError(file, line, "nothing is expected after [End]");
     if (content.startsWith("#")) {
+      if (words.length > 0) throw new TouchstoneError(file, line, "the option line is expected before the numbers");
       options ??= readOptions(content, file, line);
       return;
     }
@@ -79,6 +80,8 @@ export function readTouchstone(text: string, file = "match"): MeasuredMatch {
           return;
         case "reference":
           keywordReference = number();
+          if (!(keywordReference > 0))
+            throw new TouchstoneError(file, line, `a reference above 0 ohm is expected; got ${rest}`);
           return;
         case "network data":
           return;
@@ -113,7 +116,7 @@ export function readTouchstone(text: string, file = "match"): MeasuredMatch {
     const { line } = words[i]!;
     const frequency = f * unit;
     const last = match.frequencies.at(-1);
-    if (!(frequency > 0))
+    if (!(frequency > 0 && Number.isFinite(frequency)))
       throw new TouchstoneError(file, line, `a frequency above 0 is expected; got ${words[i]!.word}`);
     if (last !== undefined && frequency <= last)
       throw new TouchstoneError(file, line, `frequencies must rise; got ${words[i]!.word} after ${last / unit}`);

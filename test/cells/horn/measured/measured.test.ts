@@ -52,6 +52,9 @@ describe("readTouchstone", () => {
     ["1 NaN 0", "line 1: a number is expected as first number of S11; got NaN"],
     ["1 -20 0", "|S11| of at most 1 is expected"],
     ["# GHz S XX R 50\n1 0 0", 'line 1: an option like "# GHz S MA R 50" is expected; got xx'],
+    ["1e305 0.1 0", "a frequency above 0 is expected; got 1e305"],
+    ["8 0.1 0\n# GHz S RI R 50\n", "line 2: the option line is expected before the numbers"],
+    ["[Version] 2.0\n[Reference] -5\n", "a reference above 0 ohm is expected; got -5"],
     ["[Noise Data]\n", "noise data has no place in the file of a horn"],
   ])("%j", (text, message) => {
     expect(() => readTouchstone(text)).toThrow(message);
@@ -132,6 +135,11 @@ describe("readPatternCuts and measuredPerformance", () => {
 
   test.each([
     ["theta_deg,e_db\n0,0", "pattern, line 1: a column h_db is expected; the columns are theta_deg, e_db"],
+    [
+      "theta_deg,e_db,h_db,e_phase_deg\n0,0,0,0",
+      "column e_phase_deg: the phase of both cuts is expected, or of neither",
+    ],
+    ["frequency_ghz,theta_deg,e_db,h_db\n1e305,0,0,0", "a frequency above 0 is expected for every row"],
     ["theta_deg,e_db,h_db\n5,0,0\n10,1,1", "line 2, column theta_deg: a row at 0, boresight, is expected"],
     ["theta_deg,e_db,h_db\n0,0,0\n0,1,1", "line 3, column theta_deg: each angle is expected once; 0 stands twice"],
     ["theta_deg,e_db,h_db\n0,0,0\n200,1,1", "an angle from −180 to 180 is expected; got 200"],
